@@ -1,0 +1,116 @@
+// Package schematic holds the sheet: one drawing with its title block, its parts, wires and cases. Everything in it is
+// a pure value; an edit takes a sheet and gives another together with what changed.
+//
+// Places are whole grid steps, x to the right and y down; turns are quarter turns, clockwise as seen on the sheet.
+package schematic
+
+import (
+	"loopwright/schematic/kinds"
+)
+
+// Format is the name of the sheet format that this package reads and writes.
+const Format = "loopwright-sheet/1"
+
+// Point is a place on the grid.
+type Point struct{ X, Y int }
+
+// Sheet is one drawing. The zero Sheet is an empty DC sheet of size A4 that has no title.
+type Sheet struct {
+	Title, Number, Owner, Author string
+	System                       kinds.System
+	Symbols                      kinds.SymbolSet
+	Size                         string // "A4" … "A1", "A" … "D"
+	// Reference names the potential of 0 V: a potential's name, a "REF:pin", or empty for the second pin of the first source.
+	Reference string
+	Parts     []Part
+	Wires     []Wire
+	Joints    []Point // crossings that are joined
+	Cases     []Case  // never empty in a decoded sheet
+}
+
+// Part is one component on the sheet.
+type Part struct {
+	Ref    string // unique on the sheet, without the leading hyphen: "K1", "K1:2"
+	Kind   *kinds.Kind
+	At     Point
+	Turn   int  // 0, 90, 180 or 270
+	Flip   bool // mirrored left-right before turning
+	Values kinds.Values
+	Label  *Point // where a person has put its lettering, from the part's origin; nil leaves it to the placer
+}
+
+// Wire is a drawn conductor of no resistance: a chain of horizontal and vertical segments.
+type Wire struct {
+	ID     string
+	Points []Point // at least two; each segment has a length
+}
+
+// Case is one operating case.
+type Case struct {
+	Name      string
+	Follows   string            // the case whose coil states it starts from; empty for none
+	Supply    kinds.Level       // never empty in a decoded sheet
+	Positions map[string]string // by reference; what is not named is at rest
+	Timers    map[string]string // by reference: "running" or "elapsed"
+}
+
+// Fill gives the part's values with the defaults of its kind.
+func (p *Part) Fill() kinds.Filled { return p.Kind.Fill(p.Values) }
+
+// Pin is where a pin of the part lies on the sheet.
+func (p *Part) Pin(pin kinds.Pin) Point {
+	x, y := pin.X, pin.Y
+	if p.Flip {
+		x = -x
+	}
+	switch p.Turn {
+	case 90:
+		x, y = -y, x
+	case 180:
+		x, y = -x, -y
+	case 270:
+		x, y = y, -x
+	}
+	return Point{p.At.X + x, p.At.Y + y}
+}
+
+// Part finds a part by its reference; nil when there is none.
+func (s *Sheet) Part(ref string) *Part {
+	for i := range s.Parts {
+		if s.Parts[i].Ref == ref {
+			return &s.Parts[i]
+		}
+	}
+	return nil
+}
+
+// Wire finds a wire by its name; nil when there is none.
+func (s *Sheet) Wire(id string) *Wire {
+	for i := range s.Wires {
+		if s.Wires[i].ID == id {
+			return &s.Wires[i]
+		}
+	}
+	return nil
+}
+
+// Case finds a case by its name and gives its index; −1 when there is none.
+func (s *Sheet) Case(name string) int {
+	for i := range s.Cases {
+		if s.Cases[i].Name == name {
+			return i
+		}
+	}
+	return -1
+}
+
+// Position is where a part stands in a case: the named position, or rest, the first position of its kind.
+func (c *Case) Position(part *Part) string {
+	if position, ok := c.Positions[part.Ref]; ok {
+		return position
+	}
+	if part.Kind.Positions == nil {
+		return kinds.Rest
+	}
+	return part.Kind.Positions(part.Fill())[0]
+}
