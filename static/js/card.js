@@ -1,0 +1,127 @@
+// The part card: a callout beside the selected part, with its values to edit and its numbers to read.
+import { boxOf, partGroup, select, selectedParts, selectedWires } from './selection.js';
+import { overlay, sheet, svg } from './grid.js';
+import { page } from './page.js';
+import { send } from './queue.js';
+import { operate } from './operate.js';
+
+const callout = document.getElementById('callout');
+const paper = document.getElementById('paper');
+const leader = svg('line', { class: 'leader', hidden: '' });
+overlay.append(leader);
+let shown = '';
+let asked = 0;
+
+/** Shows the card of the one selected part, or none. */
+export async function refresh() {
+  const [ref, ...more] = selectedParts();
+  if (!ref || more.length > 0 || selectedWires().length > 0) { hide(); return; }
+  const turn = ++asked;
+  const address = `/s/${page.key}/card?` + new URLSearchParams({ ref, case: page.shownCase });
+  const response = await fetch(address).catch(() => null);
+  if (turn !== asked || !response?.ok) return;
+  const text = await response.text();
+  if (turn !== asked) return;
+  if (shown === ref && callout.contains(document.activeElement)) keepField(text);
+  else callout.innerHTML = text;
+  shown = ref;
+  callout.hidden = false;
+  put(ref);
+}
+
+// While somebody types in the card, only its numbers are renewed.
+function keepField(text) {
+  const fresh = new DOMParser().parseFromString(text, 'text/html');
+  for (const part of ['.computed', '.card-state']) {
+    const old = callout.querySelector(part), now = fresh.querySelector(part);
+    if (old && now) old.replaceWith(now);
+  }
+}
+
+function hide() {
+  asked++;
+  shown = '';
+  callout.hidden = true;
+  leader.setAttribute('hidden', '');
+}
+
+// Beside the part, on the side that has more room and covers less of the drawing.
+function put(ref) {
+  const group = partGroup(ref);
+  if (!group) { hide(); return; }
+  const scale = paper.clientWidth / sheet.viewBox.baseVal.width;
+  const box = boxOf(group), width = callout.offsetWidth / scale, height = callout.offsetHeight / scale;
+  const view = sheet.viewBox.baseVal;
+  const top = Math.max(10, Math.min(view.height - height - 10, (box.top + box.bottom) / 2 - height / 3));
+  const sides = [box.right + 110, box.left - 110 - width, box.right + 180, box.left - 180 - width]
+    .map(left => Math.max(10, Math.min(view.width - width - 10, left)));
+  const lefts = sides.map(left => ({ left, cost: covered({ left, top, right: left + width, bottom: top + height }, ref) }));
+  const { left } = lefts.reduce((a, b) => (b.cost < a.cost ? b : a));
+  callout.style.left = left * scale + 'px';
+  callout.style.top = top * scale + 'px';
+  lead(box, { left, top, right: left + width, bottom: top + height });
+}
+
+function covered(area, ref) {
+  let cost = 0;
+  for (const group of sheet.querySelectorAll('[data-part]')) {
+    const box = group.getBBox();
+    const wide = Math.min(area.right, box.x + box.width) - Math.max(area.left, box.x);
+    const high = Math.min(area.bottom, box.y + box.height) - Math.max(area.top, box.y);
+    if (wide > 0 && high > 0) cost += group.dataset.part === ref ? 100 * wide * high : wide * high;
+  }
+  return cost;
+}
+
+function lead(box, card) {
+  const right = card.left > box.right;
+  const y = Math.max(card.top + 12, Math.min(card.bottom - 12, (box.top + box.bottom) / 2));
+  for (const [name, value] of Object.entries({
+    x1: right ? box.right + 6 : box.left - 6, y1: (box.top + box.bottom) / 2, x2: right ? card.left : card.right, y2: y,
+  })) leader.setAttribute(name, String(value));
+  leader.toggleAttribute('hidden', card.left <= box.right && card.right >= box.left);
+}
+
+async function change(field) {
+  const ref = shown;
+  const trouble = callout.querySelector('.trouble');
+  trouble.textContent = '';
+  const edit = 'rename' in field.dataset
+    ? { do: 'rename', ref, to: field.value.trim() }
+    : { do: 'set', ref, values: { [field.name]: valueOf(field) } };
+  const answer = await send([edit]);
+  if (answer.ok) {
+    field.removeAttribute('aria-invalid');
+    field.defaultValue = field.value;
+    if (edit.do === 'rename') select({ parts: [edit.to] });
+    return;
+  }
+  trouble.textContent = answer.message;
+  field.setAttribute('aria-invalid', 'true');
+  if (field.defaultValue !== undefined && field.type !== 'checkbox') field.value = field.defaultValue;
+  field.focus();
+}
+
+function valueOf(field) {
+  if (field.type === 'checkbox') return field.checked;
+  const text = field.value.trim();
+  return text === '' ? null : text;
+}
+
+callout.addEventListener('change', event => {
+  if (event.target.matches('[data-value], [data-rename]')) change(event.target);
+});
+callout.addEventListener('click', event => {
+  const button = event.target.closest('button');
+  if (!button) return;
+  if (button.dataset.operate) operate(button.dataset.operate, button.dataset.position);
+  if (button.dataset.act) send([button.dataset.act === 'remove' ? { do: 'remove', refs: [shown], wires: [] } : { do: button.dataset.act, refs: [shown] }]);
+});
+callout.addEventListener('keydown', event => {
+  event.stopPropagation();
+  if (event.key === 'Escape') partGroup(shown)?.focus({ preventScroll: true });
+});
+document.addEventListener('loopwright:zoom', () => { if (shown) put(shown); });
+
+/** Leads the keyboard into the card. */
+export const enterCard = () => callout.querySelector('[data-value], [data-rename]')?.focus();
