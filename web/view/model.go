@@ -30,7 +30,7 @@ type Sheet struct {
 	Heading  string
 	Owner    string
 	Set      string // the symbol set
-	Drawing  []byte // the whole <svg id="sheet">
+	Drawing  string // the whole <svg id="sheet">
 	Case     string // name of the shown case
 	Strip    []Tab
 	Margin   Margin

@@ -1,0 +1,106 @@
+package view
+
+import (
+	"math"
+	"math/cmplx"
+	"strings"
+
+	"loopwright/schematic"
+	"loopwright/schematic/cases"
+	"loopwright/schematic/kinds"
+	"loopwright/schematic/quantity"
+)
+
+// BuildCard is the callout of one part in one case.
+func BuildCard(sheet *schematic.Sheet, result *cases.Result, shown int, part *schematic.Part) Card {
+	card := Card{Ref: part.Ref, Kind: part.Kind.Title, Case: result.Cases[shown].Name}
+	for _, spec := range part.Kind.Specs {
+		card.Fields = append(card.Fields, field(spec, part))
+	}
+	solved := &result.Cases[shown]
+	if part.Kind.Positions != nil {
+		card.State = state(part, solved)
+	}
+	if solved.Solved {
+		card.Computed, card.Limits = computed(sheet, result, solved, part)
+	}
+	return card
+}
+
+func field(spec kinds.Spec, part *schematic.Part) Field {
+	given, has := part.Values[spec.Name]
+	f := Field{Name: spec.Name, Title: spec.Title, Choices: spec.Choices, Flag: spec.Form == kinds.Flag, Numeric: spec.Form == kinds.Quantity}
+	shown := spec.Default
+	if has {
+		shown = given
+	}
+	f.Yes = shown.Yes
+	switch {
+	case spec.Form == kinds.Quantity && !has && (spec.Optional || spec.Required):
+		f.Default = "not given"
+	case spec.Form == kinds.Quantity && shown.Written != "":
+		f.Value = shown.Written
+	case spec.Form == kinds.Quantity:
+		f.Value = quantity.Exact(shown.Number, spec.Unit)
+	case spec.Form == kinds.Names:
+		f.Value = strings.Join(shown.Names, ", ")
+	default:
+		f.Value = shown.Written
+	}
+	return f
+}
+
+func state(part *schematic.Part, solved *cases.Case) *State {
+	state := &State{Position: solved.Positions[part.Ref]}
+	for _, position := range part.Kind.Positions(part.Fill()) {
+		if position != state.Position {
+			state.Others = append(state.Others, position)
+		}
+	}
+	return state
+}
+
+func computed(sheet *schematic.Sheet, result *cases.Result, solved *cases.Case, part *schematic.Part) ([]Figure, []Limit) {
+	for i, branch := range result.Drawing.Branches {
+		if &sheet.Parts[branch.Part] != part {
+			continue
+		}
+		reading := solved.Branches[i]
+		current := reading.Current
+		if part.Kind.Delivers {
+			current = -current
+		}
+		figures := []Figure{{"current", amount(current, quantity.Ampere)}}
+		if reading.Floating {
+			return append(figures, Figure{"voltage", "floating"}), nil
+		}
+		power := real(current * cmplx.Conj(reading.Voltage))
+		figures = append(figures, Figure{"voltage", amount(reading.Voltage, quantity.Volt)}, Figure{"power", quantity.Format(power, quantity.Watt, digits)})
+		return figures, limits(part, reading, power)
+	}
+	return nil, nil
+}
+
+// limits compares what a part carries with what it is rated for, where a rating was entered or has a default.
+func limits(part *schematic.Part, reading cases.Reading, power float64) []Limit {
+	var list []Limit
+	add := func(value, most float64, unit quantity.Unit) {
+		if math.IsNaN(most) || most <= 0 {
+			return
+		}
+		share := 100 * math.Abs(value) / most
+		list = append(list, Limit{
+			Says:  quantity.Format(share, quantity.Percent, 3) + " of " + quantity.Exact(most, unit),
+			Share: int(math.Min(125, math.Round(share))), Over: share > 100,
+		})
+	}
+	for _, rated := range part.Kind.Ratings {
+		switch rated.Of {
+		case kinds.OfCurrent:
+			add(cmplx.Abs(reading.Current), part.Fill().Number(rated.Value), quantity.Ampere)
+		case kinds.OfPower:
+			add(power, part.Fill().Number(rated.Value), quantity.Watt)
+		}
+	}
+	return list
+}
