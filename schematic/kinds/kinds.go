@@ -26,7 +26,8 @@ type Kind struct {
 	Specs  []Spec
 	Tray   []Entry // how it is offered in the tray, at least one entry
 
-	// Symbol draws the part at the origin, not turned; all pins lie on its lines' ends.
+	// Symbol draws the part at the origin, not turned; all pins lie on its lines' ends. Shapes follow IEC 60617 or
+	// IEEE 315, in our own geometry; their descriptions are from memory.
 	Symbol func(Look) stroke.List
 	// Branches gives the branches of the part under the condition of a case, always the same number in the same order.
 	// It is nil for kinds that only join or name potentials.
@@ -50,8 +51,25 @@ type Kind struct {
 	Follows bool
 	// SameConductor marks kinds through which a wire number passes unchanged: cable, ammeter, terminal.
 	SameConductor bool
-	// Upright keeps what lies within the symbol from being turned: letters of meters.
-	Upright bool
+	// DCOnly marks kinds that a phasor solution cannot hold; their Check refuses them on an AC sheet.
+	DCOnly bool
+	// Ratings are what the part is rated for, as far as a value tells it.
+	Ratings []Rating
+}
+
+// Rated is what a rating limits.
+type Rated uint8
+
+// A rating limits the current through the part or the power that it takes.
+const (
+	OfCurrent Rated = iota
+	OfPower
+)
+
+// Rating says that a value of the part is the most that it may carry for long.
+type Rating struct {
+	Of    Rated
+	Value string // name of the Spec that holds the limit
 }
 
 // Pin is a connection point of a kind.
@@ -98,6 +116,8 @@ type Look struct {
 	Set      SymbolSet
 	Position string // where it stands in the shown case
 	Closed   bool   // whether it conducts in the shown case
+	Turn     int    // how the part lies on the sheet, for signs that stay upright within the symbol
+	Flip     bool
 }
 
 // System is the electrical system of a sheet.

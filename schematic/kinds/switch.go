@@ -6,13 +6,12 @@ import (
 	"slices"
 
 	"loopwright/schematic/quantity"
-	"loopwright/schematic/stroke"
 )
 
 // Switch is one pole of anything that a person or a process operates.
 var Switch = register(&Kind{
 	Name: "switch", Title: "switch", Group: Operate, Order: 10, Letter: "S",
-	Words: []string{"button", "push", "stop", "start", "selector", "limit", "float", "make", "break", "mushroom"},
+	Words: []string{"button", "push", "stop", "start", "selector", "limit", "float", "make", "break", "mushroom", "no", "nc"},
 	Pins:  twoPins(""),
 	Specs: []Spec{
 		{Name: "form", Title: "form", Form: Choice, Default: Word(Choice, "make"), Choices: []string{"make", "break"}},
@@ -36,6 +35,7 @@ var Switch = register(&Kind{
 		closed := switchClosed(values, condition.Position)
 		return []Branch{{"1", "2", Contact(closed, values.Number("resistance"), leakage)}}
 	},
+	Legend:    func(Filled) string { return "" },
 	Positions: switchPositions,
 	Closed:    switchClosed,
 	Check:     checkSwitch,
@@ -77,8 +77,4 @@ func checkSwitch(values Filled, system System) error {
 		}
 	}
 	return nil
-}
-
-func switchSymbol(look Look) stroke.List {
-	return stroke.List{stroke.Line(0, -2, 0, -1), stroke.Line(0, 1, 0, 2)}
 }

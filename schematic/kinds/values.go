@@ -51,6 +51,11 @@ func (v Value) MarshalJSON() ([]byte, error) {
 	return json.Marshal(v.Written)
 }
 
+// written is a quantity together with how it is written.
+func written(text string, number float64) Value {
+	return Value{Form: Quantity, Number: number, Written: text}
+}
+
 // Same reports whether two values mean the same; how a quantity was written does not matter.
 func (v Value) Same(w Value) bool {
 	if v.Form != w.Form {
@@ -132,6 +137,19 @@ func (f Filled) value(name string) Value {
 func (f Filled) Exact(name string) string {
 	spec, _ := f.kind.Spec(name)
 	return quantity.Exact(f.Number(name), spec.Unit)
+}
+
+// legendOf makes the Legend that lists those of the named quantities that are known, parted by spaces.
+func legendOf(names ...string) func(Filled) string {
+	return func(values Filled) string {
+		var known []string
+		for _, name := range names {
+			if !math.IsNaN(values.Number(name)) {
+				known = append(known, values.Exact(name))
+			}
+		}
+		return strings.Join(known, " ")
+	}
 }
 
 // Read takes a value from what JSON holds: a float64, a string, a bool or a list. The error is one sentence without
