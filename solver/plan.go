@@ -1,0 +1,188 @@
+package solver
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"slices"
+	"time"
+
+	"loopwright/solver/sparse"
+)
+
+// Plan is a network prepared for being solved many times with other laws: its graph, its meshes, the order of
+// elimination and the memory are kept. It belongs to one goroutine at a time; Fork gives others their own.
+type Plan[T Scalar] struct {
+	network *Network[T]
+	through *membership
+	terms   [][]int // branches that the laws refer to
+	walk    *spread[T]
+	compact *meshSystem[T]
+	full    *meshSystem[T] // with a row for every branch; made when it is first needed
+	nodal   *nodalSystem[T]
+}
+
+// Solve prepares a network and solves it once. The error is a *Problem when the network has no unique solution, wraps
+// ctx.Err() when the context ended, and names the mistake when n is no network.
+func Solve[T Scalar](ctx context.Context, n *Network[T]) (*Solution[T], error) {
+	start := time.Now()
+	plan, err := Prepare(ctx, n)
+	if err != nil {
+		return nil, err
+	}
+	preparing := time.Since(start)
+	solution, err := plan.Solve(ctx, lawsOf(n))
+	if err != nil {
+		return nil, err
+	}
+	solution.Timing.Solve += preparing
+	return solution, nil
+}
+
+func lawsOf[T Scalar](n *Network[T]) []Law[T] {
+	laws := make([]Law[T], len(n.Branches))
+	for b := range laws {
+		laws[b] = n.Branches[b].Law
+	}
+	return laws
+}
+
+// Prepare checks a network and orders its mesh equations. The laws of n decide which branches are given a row; a branch
+// with Law.Row set can take any law later, others must stay solvable for their voltage or cost a second layout.
+func Prepare[T Scalar](ctx context.Context, n *Network[T]) (*Plan[T], error) {
+	if err := validate(n); err != nil {
+		return nil, err
+	}
+	laws := lawsOf(n)
+	if err := validateLaws(laws); err != nil {
+		return nil, err
+	}
+	all := make([]int, len(laws))
+	p := &Plan[T]{network: n, through: newMembership(len(laws), n.Meshes), terms: make([][]int, len(laws))}
+	for b := range laws {
+		all[b] = b
+		p.terms[b] = termBranches(&laws[b])
+	}
+	p.walk = newSpread(n, all)
+	large := largeImpedance(laws)
+	var err error
+	p.compact, err = newMeshSystem(ctx, n, p.through, laws, func(b int) bool {
+		return laws[b].needsRow() || magnitude(laws[b].Alpha) > large*magnitude(laws[b].Beta)
+	})
+	return p, err
+}
+
+func termBranches[T Scalar](law *Law[T]) []int {
+	var branches []int
+	for _, term := range law.Terms {
+		branches = append(branches, term.Branch)
+	}
+	return branches
+}
+
+// spreadLimit is how far apart impedances in one mesh equation may be: adding them loses this many units in the last place
+// of the smaller.
+const spreadLimit = 1e5
+
+// largeImpedance gives the impedance above which a branch is given a row.
+func largeImpedance[T Scalar](laws []Law[T]) float64 {
+	smallest := 0.0
+	for b := range laws {
+		if laws[b].Alpha != 0 && laws[b].Beta != 0 {
+			z := magnitude(laws[b].Alpha) / magnitude(laws[b].Beta)
+			if smallest == 0 || z < smallest {
+				smallest = z
+			}
+		}
+	}
+	return smallest * spreadLimit
+}
+
+// Solve solves the network with the given laws, one for each branch, and audits the solution. Laws must refer to the same
+// other branches as those that the plan was prepared with. Errors are as those of the function Solve.
+func (p *Plan[T]) Solve(ctx context.Context, laws []Law[T]) (*Solution[T], error) {
+	solution, err := p.SolveUnaudited(ctx, laws)
+	if err != nil {
+		return nil, err
+	}
+	if err := p.Audit(ctx, laws, solution); err != nil {
+		return nil, err
+	}
+	return solution, nil
+}
+
+// SolveUnaudited is Solve without the audit, for the steps of an iteration whose last result is audited.
+func (p *Plan[T]) SolveUnaudited(ctx context.Context, laws []Law[T]) (*Solution[T], error) {
+	start := time.Now()
+	if err := p.accept(laws); err != nil {
+		return nil, err
+	}
+	split := findPieces(p.network, laws)
+	if problem := findProblem(p.network, laws, split); problem != nil {
+		return nil, problem
+	}
+	system, err := p.solveMeshes(ctx, laws, split)
+	if err != nil {
+		return nil, err
+	}
+	solution := p.solution(system, laws, split)
+	solution.Timing.Solve = time.Since(start)
+	return solution, nil
+}
+
+func (p *Plan[T]) accept(laws []Law[T]) error {
+	if len(laws) != len(p.network.Branches) {
+		return fmt.Errorf("%d laws given for %d branches", len(laws), len(p.network.Branches))
+	}
+	if err := validateLaws(laws); err != nil {
+		return err
+	}
+	for b := range laws {
+		if !slices.EqualFunc(laws[b].Terms, p.terms[b], func(t Term[T], branch int) bool { return t.Branch == branch }) {
+			return fmt.Errorf("the law of branch %d refers to other branches than when the network was prepared", b)
+		}
+	}
+	return nil
+}
+
+// solveMeshes solves the mesh equations in the compact layout, and with a row for every branch where the compact layout
+// cannot hold the laws, is singular, or would lose digits.
+func (p *Plan[T]) solveMeshes(ctx context.Context, laws []Law[T], split *pieces) (*meshSystem[T], error) {
+	var singular *sparse.Singular
+	if p.compact.holds(laws) {
+		err := p.compact.solve(ctx, laws, split.gauge)
+		if err == nil && p.compact.accurate(laws) {
+			return p.compact, nil
+		}
+		if err != nil && !errors.As(err, &singular) {
+			return nil, err
+		}
+	}
+	if p.full == nil {
+		full, err := newMeshSystem(ctx, p.network, p.through, laws, func(int) bool { return true })
+		if err != nil {
+			return nil, err
+		}
+		p.full = full
+	}
+	err := p.full.solve(ctx, laws, split.gauge)
+	if errors.As(err, &singular) {
+		return nil, p.singular(laws)
+	}
+	return p.full, err
+}
+
+// singular names what is at fault when the graph has shown nothing.
+func (p *Plan[T]) singular(laws []Law[T]) error {
+	if !independent(p.network.Meshes) {
+		return errors.New("the meshes are not independent: one of them is a combination of others")
+	}
+	problem := &Problem{Code: Undetermined}
+	for b := range laws {
+		if len(laws[b].Terms) > 0 {
+			problem.Code = ControlLoop
+			problem.Branches = append(problem.Branches, b)
+		}
+	}
+	return problem
+}

@@ -1,0 +1,111 @@
+package sparse
+
+// Pattern is where a square matrix may have entries, in compressed columns: the rows of column j are
+// Row[Start[j]:Start[j+1]], ascending and each once.
+type Pattern struct {
+	N     int
+	Start []int // N+1
+	Row   []int
+}
+
+// Matrix is a pattern with the value of each of its entries; entries may be zero.
+type Matrix[T Scalar] struct {
+	*Pattern
+	Value []T
+}
+
+// Entries is the number of places that the pattern holds.
+func (p *Pattern) Entries() int { return len(p.Row) }
+
+// NewMatrix makes a matrix of zeros on a pattern.
+func NewMatrix[T Scalar](p *Pattern) *Matrix[T] {
+	return &Matrix[T]{Pattern: p, Value: make([]T, p.Entries())}
+}
+
+// NewPattern gathers the places (rows[k], columns[k]) of an n×n matrix, in any order, repeated or not. slot[k] is where the
+// value of place k belongs in Matrix.Value: adding each term to its slot assembles a matrix. Places out of range panic.
+// Linear time, by two counting sorts.
+func NewPattern(n int, rows, columns []int) (pattern *Pattern, slot []int) {
+	if len(rows) != len(columns) {
+		panic(errLength)
+	}
+	byRow := countingSort(n, rows, nil)
+	order := countingSort(n, columns, byRow)
+	pattern = &Pattern{N: n, Start: make([]int, n+1), Row: make([]int, 0, len(rows))}
+	slot = make([]int, len(rows))
+	column := 0
+	for index, k := range order {
+		for column < columns[k] {
+			column++
+			pattern.Start[column] = len(pattern.Row)
+		}
+		repeated := index > 0 && rows[order[index-1]] == rows[k] && columns[order[index-1]] == columns[k]
+		if !repeated {
+			pattern.Row = append(pattern.Row, rows[k])
+		}
+		slot[k] = len(pattern.Row) - 1
+	}
+	for column < n {
+		column++
+		pattern.Start[column] = len(pattern.Row)
+	}
+	return pattern, slot
+}
+
+// countingSort orders 0 … len(keys)−1 by key, keeping the order of first (nil: ascending) among equal keys.
+func countingSort(n int, keys, first []int) []int {
+	next := make([]int, n+1)
+	for _, key := range keys {
+		next[key+1]++
+	}
+	for key := range n {
+		next[key+1] += next[key]
+	}
+	order := make([]int, len(keys))
+	for position := range keys {
+		k := position
+		if first != nil {
+			k = first[position]
+		}
+		order[next[keys[k]]] = k
+		next[keys[k]]++
+	}
+	return order
+}
+
+// Transpose gives the pattern of the transposed matrix; from[p] is where its entry p stands in the original.
+func (p *Pattern) Transpose() (transposed *Pattern, from []int) {
+	t := &Pattern{N: p.N, Start: make([]int, p.N+1), Row: make([]int, p.Entries())}
+	from = make([]int, p.Entries())
+	for _, i := range p.Row {
+		t.Start[i+1]++
+	}
+	for i := range p.N {
+		t.Start[i+1] += t.Start[i]
+	}
+	next := append([]int(nil), t.Start[:p.N]...)
+	for j := range p.N {
+		for q := p.Start[j]; q < p.Start[j+1]; q++ {
+			i := p.Row[q]
+			t.Row[next[i]] = j
+			from[next[i]] = q
+			next[i]++
+		}
+	}
+	return t, from
+}
+
+// Zero sets all values to zero.
+func (a *Matrix[T]) Zero() { clear(a.Value) }
+
+// Multiply adds A·x to y.
+func (a *Matrix[T]) Multiply(y, x []T) {
+	if len(x) != a.N || len(y) != a.N {
+		panic(errLength)
+	}
+	for j, xj := range x {
+		for p := a.Start[j]; p < a.Start[j+1]; p++ {
+			y[a.Row[p]] += a.Value[p] * xj
+		}
+	}
+}
