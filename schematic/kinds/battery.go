@@ -27,12 +27,7 @@ var Battery = register(&Kind{
 		voltage := supplied(values, condition.Supply, 0.15)
 		return []Branch{{"1", "2", Impedance(complex(values.Number("resistance"), 0), complex(voltage, 0))}}
 	},
-	Legend: legendOf("voltage"),
-	Check: func(values Filled, system System) error {
-		if err := checkDC(values, system); err != nil {
-			return err
-		}
-		return checkLimits(values)
-	},
+	Legend:   legendOf("voltage"),
+	Check:    checkLimits,
 	Delivers: true, Follows: true, DCOnly: true,
 })

@@ -29,10 +29,7 @@ var DCSupply = register(&Kind{
 		if values.Has("current_limit") {
 			return errors.New("current_limit: a supply that limits its current is not built yet; leave it out")
 		}
-		if err := checkDC(values, system); err != nil {
-			return err
-		}
-		return checkLimits(values)
+		return checkLimits(values, system)
 	},
 	Delivers: true, Follows: true, DCOnly: true,
 	Ratings: []Rating{{OfCurrent, "rated_current"}},

@@ -51,7 +51,7 @@ type Kind struct {
 	Follows bool
 	// SameConductor marks kinds through which a wire number passes unchanged: cable, ammeter, terminal.
 	SameConductor bool
-	// DCOnly marks kinds that a phasor solution cannot hold; their Check refuses them on an AC sheet.
+	// DCOnly marks kinds that a phasor solution cannot hold; an AC sheet refuses them.
 	DCOnly bool
 	// Ratings are what the part is rated for, as far as a value tells it.
 	Ratings []Rating

@@ -206,12 +206,10 @@ func TestValuesThatMakeNoSenseTogetherAreRefused(t *testing.T) {
 		{VoltageSource, Values{"voltage": Number(1), "phase": Number(30)}, dc, "phase:"},
 		{VoltageSource, Values{"voltage": Number(1), "phase": Number(30)}, ac, ""},
 		{CurrentSource, Values{"current": Number(1), "phase": Number(30)}, dc, "phase:"},
-		{DCSupply, nil, ac, "kind:"},
 		{DCSupply, Values{"current_limit": Number(3)}, dc, "current_limit:"},
 		{DCSupply, Values{"low": Number(25)}, dc, "low:"},
 		{DCSupply, Values{"high": Number(23)}, dc, "high:"},
 		{DCSupply, Values{"low": Number(24), "high": Number(24)}, dc, ""},
-		{Battery, nil, ac, "kind:"},
 		{Battery, Values{"low": Number(13)}, dc, "low:"},
 		{Lamp, Values{"cold_ratio": Number(0.1)}, dc, "cold_ratio:"},
 		{Switch, Values{"drop": Number(2)}, dc, "drop:"},
@@ -226,6 +224,14 @@ func TestValuesThatMakeNoSenseTogetherAreRefused(t *testing.T) {
 			t.Errorf("%s %v on %s: refused: %v", c.kind.Name, c.values, c.system.Kind, err)
 		case c.place != "" && (err == nil || !strings.HasPrefix(err.Error(), c.place)):
 			t.Errorf("%s %v on %s: %v, want a refusal of %s", c.kind.Name, c.values, c.system.Kind, err, c.place)
+		}
+	}
+}
+
+func TestSuppliesOfDirectVoltageAreForDCSheetsOnly(t *testing.T) {
+	for _, kind := range All() {
+		if want := kind == DCSupply || kind == Battery; kind.DCOnly != want {
+			t.Errorf("%s: DCOnly is %v", kind.Name, kind.DCOnly)
 		}
 	}
 }

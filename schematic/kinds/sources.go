@@ -62,21 +62,13 @@ func supplied(values Filled, level Level, share float64) float64 {
 }
 
 // checkLimits refuses limits that do not lie on either side of the voltage.
-func checkLimits(values Filled) error {
+func checkLimits(values Filled, _ System) error {
 	voltage := values.Number("voltage")
 	if values.Has("low") && values.Number("low") > voltage {
 		return fmt.Errorf("low: %s is above the voltage of %s; the low limit must not be above it", values.Exact("low"), values.Exact("voltage"))
 	}
 	if values.Has("high") && values.Number("high") < voltage {
 		return fmt.Errorf("high: %s is below the voltage of %s; the high limit must not be below it", values.Exact("high"), values.Exact("voltage"))
-	}
-	return nil
-}
-
-// checkDC refuses a kind that has no phasor.
-func checkDC(values Filled, system System) error {
-	if system.AC() {
-		return fmt.Errorf("kind: a %s gives direct voltage, which an ac sheet cannot hold; use a voltage-source, or set the sheet to dc", values.kind.Title)
 	}
 	return nil
 }
