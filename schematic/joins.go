@@ -26,6 +26,8 @@ type Joins struct {
 	Groups    int           // how many groups of joined things there are
 	Dots      []Point       // places where three or more ways meet, in reading order
 	Crossings []Point       // where pieces cross without joining
+
+	along [][]Point // the places on each wire, in the direction of drawing
 }
 
 // Join finds what is joined on a sheet. Its cost is O(n log n) in the number of pins and wire corners, and one step for
@@ -113,9 +115,12 @@ func (r rows) along(from, to Point) []Point {
 func (j *Joins) cutWires(sheet *Sheet) {
 	lines := j.rows()
 	drawn := map[[2]int]bool{}
+	j.along = make([][]Point, len(sheet.Wires))
 	for w, wire := range sheet.Wires {
+		j.along[w] = append(j.along[w], wire.Points[0])
 		for i := 1; i < len(wire.Points); i++ {
 			places := lines.along(wire.Points[i-1], wire.Points[i])
+			j.along[w] = append(j.along[w], places[1:]...)
 			for k := 1; k < len(places); k++ {
 				a, b := j.Node[places[k-1]], j.Node[places[k]]
 				if key := [2]int{min(a, b), max(a, b)}; !drawn[key] {
