@@ -105,7 +105,7 @@ func (d *draft) insertInSeries(index int) {
 			if !onSegment(a, points[i-1], points[i]) || !onSegment(b, points[i-1], points[i]) {
 				continue
 			}
-			if !d.clearBetween(w, a, b) {
+			if !d.clearBetween(index, w, a, b) {
 				return
 			}
 			d.cut(w, i, a, b)
@@ -114,13 +114,13 @@ func (d *draft) insertInSeries(index int) {
 	}
 }
 
-// clearBetween reports whether nothing is attached to a wire strictly between two places on it, and no other wire runs
-// along there.
-func (d *draft) clearBetween(w int, a, b Point) bool {
+// clearBetween reports whether no other part touches a wire between the two pins of a part, or at them, nothing else is
+// attached strictly between, and no other wire runs along there.
+func (d *draft) clearBetween(part, w int, a, b Point) bool {
 	inside := func(p Point) bool { return p != a && p != b && onSegment(p, a, b) }
 	for i := range d.Parts {
 		for _, pin := range d.Parts[i].Kind.Pins {
-			if inside(d.Parts[i].Pin(pin)) {
+			if i != part && onSegment(d.Parts[i].Pin(pin), a, b) {
 				return false
 			}
 		}

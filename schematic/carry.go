@@ -250,6 +250,8 @@ func (c *carry) leadEnd(w int, points, along []Point, to Point) []Point {
 			chains = append(chains, slices.Concat(way, points[i+1:]))
 		}
 	}
+	// A way that comes back on itself could be straightened past the place that has to stay.
+	chains = slices.DeleteFunc(chains, func(chain []Point) bool { return !leadsOver(straighten(chain), points[keep], to) })
 	return c.scene.best(chains, group)
 }
 

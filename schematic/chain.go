@@ -25,6 +25,19 @@ func straighten(points []Point) []Point {
 	return chain
 }
 
+// leadsOver reports whether a chain passes a place; of a chain of which nothing is left, whether its ends met there.
+func leadsOver(chain []Point, p, end Point) bool {
+	if chain == nil {
+		return p == end
+	}
+	for i := 1; i < len(chain); i++ {
+		if onSegment(p, chain[i-1], chain[i]) {
+			return true
+		}
+	}
+	return false
+}
+
 func inLine(a, b, c Point) bool {
 	return (a.X == b.X && b.X == c.X) || (a.Y == b.Y && b.Y == c.Y)
 }

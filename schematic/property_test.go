@@ -6,6 +6,7 @@ import (
 	"errors"
 	"fmt"
 	"math/rand/v2"
+	"strings"
 	"testing"
 
 	"pgregory.net/rapid"
@@ -170,7 +171,7 @@ func parted(before, after *schematic.Sheet) string {
 func TestMovingAndTurningNeverPartsWhatWasJoined(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		play(handOf(t), 30, func(before, after *schematic.Sheet, _ *schematic.Change, edit string) {
-			if !bytes.Contains([]byte(edit), []byte(`"move"`)) && !bytes.Contains([]byte(edit), []byte(`"turn"`)) {
+			if !strings.Contains(edit, `"do":"move"`) && !strings.Contains(edit, `"do":"turn"`) && !strings.Contains(edit, `"do":"flip"`) {
 				return
 			}
 			if what := parted(before, after); what != "" {
