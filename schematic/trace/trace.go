@@ -1,0 +1,103 @@
+// Package trace reads the circuit off a sheet: which pins are one potential, which branches lie between the potentials,
+// and along which meshes they are solved.
+package trace
+
+import (
+	"loopwright/schematic"
+	"loopwright/schematic/kinds"
+	"loopwright/schematic/stroke"
+)
+
+// Potential is everything that is joined without resistance.
+type Potential struct {
+	Number     string   // "0" for the reference, the others "1", "2" … in reading order of their first place
+	WireNumber string   // what the ferrule says: it passes unchanged through ammeters and terminals
+	Name       string   // what a potential or earth symbol calls it; empty for none
+	Pins       []string // "G1:2", in reading order
+}
+
+// Branch is one element of the circuit. Branches stand in the order of the parts on the sheet.
+type Branch struct {
+	Part     int // index in Sheet.Parts
+	Ref      string
+	Index    int       // within the part
+	Pins     [2]string // it runs from the first to the second
+	From, To int       // potentials
+}
+
+// Step is one branch of a mesh: Sense is 1 where the mesh runs from the branch's first pin to its second, else −1.
+type Step struct{ Branch, Sense int }
+
+// Mesh is a closed way along branches. A drawn mesh is a face of the drawing and runs clockwise. Any other is a loop,
+// which runs its first branch, in the order of branches, from the first pin to the second.
+type Mesh struct {
+	Name    string // "m1", "m2" … in reading order, the drawn ones first
+	Drawn   bool
+	Path    []Step
+	Outline []stroke.Point // of a drawn mesh
+	Center  stroke.Point   // where a drawn mesh is widest, in grid steps
+	Radius  float64        // of the largest circle around Center within the outline, in grid steps
+}
+
+// Statement says what is not joined to what one would expect.
+type Statement struct {
+	Rule string // "dangling-end", "open-pin" or "floating"
+	Says string
+	Refs []string
+	Wire string
+	At   *schematic.Point
+}
+
+// Drawing is a sheet as a circuit. It holds for every case: what a switch does changes the law of its branch and
+// nothing here.
+type Drawing struct {
+	Sheet         *schematic.Sheet
+	Joins         *schematic.Joins
+	Potentials    []Potential
+	Branches      []Branch
+	Meshes        []Mesh
+	WirePotential []int   // by wire
+	PinPotential  [][]int // by part and pin
+	Reference     int     // the potential of 0 V
+	Statements    []Statement
+}
+
+// Trace reads a sheet. Its cost is O(n log n) where the drawing is plane and all circuits are closed on paper; each mesh
+// that is not a face of the drawing costs a search through the circuit.
+func Trace(sheet *schematic.Sheet) *Drawing {
+	d := &Drawing{Sheet: sheet, Joins: schematic.Join(sheet)}
+	d.findPotentials()
+	d.findBranches()
+	d.numberWires()
+	d.findMeshes()
+	d.state()
+	return d
+}
+
+// resting is a condition under which every kind gives its branches; which they are does not depend on it.
+func resting(sheet *schematic.Sheet, part *schematic.Part) kinds.Condition {
+	condition := kinds.Condition{System: sheet.System, Supply: kinds.Nominal, Position: kinds.Rest}
+	if part.Kind.Positions != nil {
+		condition.Position = part.Kind.Positions(part.Fill())[0]
+	}
+	return condition
+}
+
+func (d *Drawing) findBranches() {
+	for i := range d.Sheet.Parts {
+		part := &d.Sheet.Parts[i]
+		if part.Kind.Branches == nil {
+			continue
+		}
+		potential := make(map[string]int, len(part.Kind.Pins))
+		for k, pin := range part.Kind.Pins {
+			potential[pin.Name] = d.PinPotential[i][k]
+		}
+		for k, branch := range part.Kind.Branches(part.Fill(), resting(d.Sheet, part)) {
+			d.Branches = append(d.Branches, Branch{
+				Part: i, Ref: part.Ref, Index: k, Pins: [2]string{branch.From, branch.To},
+				From: potential[branch.From], To: potential[branch.To],
+			})
+		}
+	}
+}
