@@ -1,35 +1,17 @@
 package solver
 
-// accurate reports whether every branch without row has its voltage to rounding: the difference of large mesh currents
-// through a large impedance may not have it.
-func (s *meshSystem[T]) accurate(laws []Law[T]) bool {
-	largest, worst := 0.0, 0.0
-	for b := range laws {
-		if s.row[b] >= 0 {
-			largest = max(largest, magnitude(s.x[len(s.network.Meshes)+s.row[b]]))
-			continue
-		}
-		z, e := impedance(&laws[b])
-		var j T
-		sum := 0.0
-		through, senses := s.through.of(b)
-		for k, m := range through {
-			j += signed(senses[k], s.x[m])
-			sum += magnitude(s.x[m])
-		}
-		largest = max(largest, magnitude(e+z*j))
-		worst = max(worst, magnitude(z)*sum)
-	}
-	return worst <= spreadLimit*largest
-}
+import "loopwright/solver/sparse"
 
 // solution turns the unknowns into currents and voltages.
 func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solution[T] {
 	n := p.network
 	solution := &Solution[T]{
-		Mesh:    append([]T(nil), s.x[:len(n.Meshes)]...),
+		Mesh:    make([]T, len(n.Meshes)),
 		Current: make([]T, len(laws)), Voltage: make([]T, len(laws)), Node: make([]T, n.Nodes),
 		FloatingNode: make([]bool, n.Nodes), FloatingBranch: split.cut, Piece: split.of,
+	}
+	for m := range solution.Mesh {
+		solution.Mesh[m] = scaled(orZero(s.x[m].Round(), s.zero), 1/s.ohms)
 	}
 	for b := range laws {
 		solution.Current[b], solution.Voltage[b] = s.branch(b, &laws[b])
@@ -42,30 +24,40 @@ func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solu
 	return solution
 }
 
-// branch gives current and voltage of a branch. Where the law gives one of them from the other, the one that has lost
-// fewer digits is taken as given.
+// negligible is how small a sum must be against its terms to be zero, nothing how small a value must be against the
+// largest of the case. Both lie far above the rounding of the refined solution, and far below any current or voltage
+// that could be real.
+const (
+	negligible = 0x1p-80
+	nothing    = 0x1p-90
+)
+
+// zeroBelow is the magnitude below which values of a case are nothing but rounding.
+func zeroBelow(size float64, refinement sparse.Refinement) float64 {
+	return max(nothing*size, 16*refinement.Error)
+}
+
+// branch gives current and voltage of a branch. What its law gives directly is taken from there.
 func (s *meshSystem[T]) branch(b int, law *Law[T]) (j, u T) {
-	sum := 0.0
-	through, senses := s.through.of(b)
-	for k, m := range through {
-		j += signed(senses[k], s.x[m])
-		sum += magnitude(s.x[m])
+	through, _ := s.through.of(b)
+	total := 0.0
+	for _, m := range through {
+		total += magnitude(s.x[m].Value)
 	}
+	j = orZero(s.current(b).Round(), max(negligible*total, s.zero))
+	u = s.voltage(b, law).Round()
 	if s.row[b] < 0 {
-		z, e := impedance(law)
-		return j, e + z*j
+		u = orZero(u, negligible*(magnitude(law.Gamma)+magnitude(law.Alpha)*total/s.ohms))
 	}
-	u = s.x[len(s.network.Meshes)+s.row[b]]
-	switch {
-	case len(law.Terms) > 0:
-	case law.Beta == 0:
-		j = law.Gamma / law.Alpha
-	case law.Alpha == 0:
-		u = law.Gamma / law.Beta
-	case magnitude(law.Gamma)+magnitude(law.Beta*u) < magnitude(law.Alpha)*sum:
-		j = (law.Gamma - law.Beta*u) / law.Alpha
-	default:
-		u = (law.Gamma - law.Alpha*j) / law.Beta
+	u = orZero(u, s.zero)
+	j = scaled(j, 1/s.ohms)
+	if len(law.Terms) == 0 {
+		if law.Beta == 0 {
+			j = law.Gamma / law.Alpha
+		}
+		if law.Alpha == 0 {
+			u = law.Gamma / law.Beta
+		}
 	}
 	return j, u
 }

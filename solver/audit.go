@@ -2,10 +2,7 @@ package solver
 
 import (
 	"context"
-	"errors"
 	"time"
-
-	"loopwright/solver/sparse"
 )
 
 // Audit checks a solution of the plan's network under the given laws and fills in solution.Audit. The error is that of
@@ -124,25 +121,20 @@ func (p *Plan[T]) nodalGap(ctx context.Context, laws []Law[T], solution *Solutio
 		}
 		p.nodal = nodal
 	}
-	node, current, err := p.nodal.solve(ctx, laws)
-	var singular *sparse.Singular
-	if errors.As(err, &singular) {
-		return 1, nil
-	}
-	if err != nil {
-		return 0, err
+	if solved, err := p.nodal.solve(ctx, laws); err != nil || !solved {
+		return 1, err
 	}
 	currents, voltages := 0.0, 0.0
 	for b, j := range solution.Current {
-		currents = max(currents, modulus(j-current[b]))
+		currents = max(currents, modulus(j-p.nodal.current[b]))
 		if !solution.FloatingBranch[b] {
 			branch := p.network.Branches[b]
-			voltages = max(voltages, modulus(solution.Voltage[b]-(node[branch.From]-node[branch.To])))
+			voltages = max(voltages, modulus(solution.Voltage[b]-p.nodal.voltage(branch.From, branch.To)))
 		}
 	}
 	for k, v := range solution.Node {
 		if !solution.FloatingNode[k] {
-			voltages = max(voltages, modulus(v-(node[k]-node[p.network.Reference])))
+			voltages = max(voltages, modulus(v-p.nodal.voltage(k, p.network.Reference)))
 		}
 	}
 	return max(ratio(currents, largest.current), ratio(voltages, largest.voltage)), nil

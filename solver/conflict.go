@@ -33,5 +33,5 @@ func findProblem[T Scalar](n *Network[T], laws []Law[T], split *pieces) *Problem
 	return nil
 }
 
-// nothing reports whether a sum is no more than the rounding of its terms, whose magnitudes sum to total.
-func nothing[T Scalar](sum T, total float64) bool { return magnitude(sum) <= 16*epsilon*total }
+// balanced reports whether a sum is no more than the rounding of its terms, whose magnitudes sum to total.
+func balanced[T Scalar](sum T, total float64) bool { return magnitude(sum) <= 16*epsilon*total }

@@ -61,7 +61,7 @@ func (g *cutGraph[T]) crosses(b int) (from, to int, crosses bool) {
 
 // conflict finds the lump with the fewest sources whose currents do not add up to zero.
 func (g *cutGraph[T]) conflict() *Problem {
-	return g.smallest(NoReturnPath, func(lump int) bool { return !nothing(g.sum[lump], g.total[lump]) })
+	return g.smallest(NoReturnPath, func(lump int) bool { return !balanced(g.sum[lump], g.total[lump]) })
 }
 
 // undetermined finds the lump with the fewest sources: the voltages across them can be anything.

@@ -71,7 +71,7 @@ func (g *idealGraph[T]) conflict() *Problem {
 	if !g.cyclic {
 		return nil
 	}
-	loop := g.shortest(func(sum T, total float64) bool { return !nothing(sum, total) })
+	loop := g.shortest(func(sum T, total float64) bool { return !balanced(sum, total) })
 	if loop == nil {
 		return nil
 	}
@@ -95,7 +95,7 @@ func (g *idealGraph[T]) problem(code Code, loop []Step) *Problem {
 		sum += signed(step.Sense, g.emf(step.Branch))
 		total += magnitude(g.emf(step.Branch))
 	}
-	if nothing(sum, total) {
+	if balanced(sum, total) {
 		sum = 0
 	}
 	return &Problem{Code: code, Branches: sortedUnique(branches), Loop: loop, Sum: asComplex(sum)}

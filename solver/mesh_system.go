@@ -2,10 +2,10 @@ package solver
 
 import (
 	"context"
-	"errors"
 	"math"
 
 	"loopwright/solver/sparse"
+	"loopwright/solver/wide"
 )
 
 // membership lists the meshes that run through each branch, with the sense in which they do.
@@ -56,9 +56,11 @@ type meshSystem[T Scalar] struct {
 	slot   []int // where each term of the equations belongs, in the order in which terms gives them
 	matrix *sparse.Matrix[T]
 	factor *sparse.LU[T]
-	right  []T
-	x      []T
-	size   []float64 // largest entry of each equation
+	ohms   float64          // mesh currents are unknowns in units of 1 V / ohms
+	scale  []float64        // what each equation is multiplied by
+	x      []wide.Number[T] // the unknowns, with twice the digits
+	zero   float64          // what is nothing but rounding, V
+	sum    []wide.Number[T] // what is left of each equation
 }
 
 // newMeshSystem lays out the equations with the given row branches, and orders their elimination.
@@ -73,7 +75,8 @@ func newMeshSystem[T Scalar](ctx context.Context, n *Network[T], through *member
 	}
 	size := len(n.Meshes) + len(s.rows)
 	var equations, unknowns []int
-	s.terms(laws, nil, 1, func(equation, unknown int, _ T) {
+	s.ohms = 1
+	s.terms(laws, nil, func(equation, unknown int, _ T) {
 		equations, unknowns = append(equations, equation), append(unknowns, unknown)
 	})
 	pattern, slot := sparse.NewPattern(size, equations, unknowns)
@@ -82,7 +85,7 @@ func newMeshSystem[T Scalar](ctx context.Context, n *Network[T], through *member
 		return nil, err
 	}
 	s.slot, s.matrix, s.factor = slot, sparse.NewMatrix[T](pattern), sparse.NewLU[T](symbolic)
-	s.right, s.x, s.size = make([]T, size), make([]T, size), make([]float64, size)
+	s.scale, s.x, s.sum = make([]float64, size), make([]wide.Number[T], size), make([]wide.Number[T], size)
 	return s, nil
 }
 
@@ -96,18 +99,14 @@ func (s *meshSystem[T]) holds(laws []Law[T]) bool {
 	return true
 }
 
-// impedance gives Z and E of a branch without row: u = E + Z·j.
-func impedance[T Scalar](law *Law[T]) (z, e T) { return -law.Alpha / law.Beta, law.Gamma / law.Beta }
-
-// terms gives every term of the left side. Mesh currents are unknowns in units of 1 V / ohms. The order and the places are
-// the same for all laws of one layout.
-func (s *meshSystem[T]) terms(laws []Law[T], gauge []bool, ohms float64, emit func(equation, unknown int, value T)) {
+// terms gives every term of the left side. The order and the places are the same for all laws of one layout. A branch
+// without row has the law u − Z·j = E, so its Alpha is −Z and its Gamma is E.
+func (s *meshSystem[T]) terms(laws []Law[T], gauge []bool, emit func(equation, unknown int, value T)) {
 	meshes := len(s.network.Meshes)
 	for b := range laws {
 		law := &laws[b]
 		if s.row[b] < 0 {
-			z, _ := impedance(law)
-			s.voltageDrop(b, scaled(z, 1/ohms), emit)
+			s.voltageDrop(b, scaled(law.Alpha, -1/s.ohms), emit)
 			continue
 		}
 		row := meshes + s.row[b]
@@ -118,11 +117,11 @@ func (s *meshSystem[T]) terms(laws []Law[T], gauge []bool, ohms float64, emit fu
 		through, senses := s.through.of(b)
 		for k, m := range through {
 			emit(m, row, scalar[T](float64(senses[k])))
-			emit(row, m, scaled(alpha, float64(senses[k])/ohms))
+			emit(row, m, scaled(alpha, float64(senses[k])/s.ohms))
 		}
 		emit(row, row, beta)
 		for k := range law.Terms {
-			s.control(row, &law.Terms[k], &laws[law.Terms[k].Branch], ohms, emit)
+			s.control(row, &law.Terms[k], &laws[law.Terms[k].Branch], emit)
 		}
 	}
 }
@@ -138,94 +137,104 @@ func (s *meshSystem[T]) voltageDrop(b int, z T, emit func(equation, unknown int,
 }
 
 // control gives the terms of a controlled source in its row.
-func (s *meshSystem[T]) control(row int, term *Term[T], law *Law[T], ohms float64, emit func(equation, unknown int, value T)) {
+func (s *meshSystem[T]) control(row int, term *Term[T], law *Law[T], emit func(equation, unknown int, value T)) {
 	alpha := term.Alpha
 	if r := s.row[term.Branch]; r >= 0 {
 		emit(row, len(s.network.Meshes)+r, term.Beta)
 	} else {
-		z, _ := impedance(law)
-		alpha += term.Beta * z
+		alpha -= term.Beta * law.Alpha
 	}
 	through, senses := s.through.of(term.Branch)
 	for k, m := range through {
-		emit(row, m, scaled(alpha, float64(senses[k])/ohms))
+		emit(row, m, scaled(alpha, float64(senses[k])/s.ohms))
 	}
 }
 
-// rightSide fills in what does not depend on the unknowns.
-func (s *meshSystem[T]) rightSide(laws []Law[T], gauge []bool) {
-	clear(s.right)
-	for b := range laws {
-		law := &laws[b]
-		if s.row[b] < 0 {
-			_, e := impedance(law)
-			through, senses := s.through.of(b)
-			for k, m := range through {
-				s.right[m] -= signed(senses[k], e)
-			}
-			continue
-		}
-		row := len(s.network.Meshes) + s.row[b]
-		if gauge[b] {
-			continue
-		}
-		s.right[row] = law.Gamma
-		for _, term := range law.Terms {
-			if s.row[term.Branch] < 0 {
-				_, e := impedance(&laws[term.Branch])
-				s.right[row] -= term.Beta * e
-			}
-		}
-	}
-}
-
-// solve assembles, factorises and solves the equations. The error is *sparse.Singular or that of ctx.
-func (s *meshSystem[T]) solve(ctx context.Context, laws []Law[T], gauge []bool) error {
-	ohms := typicalImpedance(laws)
+// solve assembles, factorises and solves the equations. It reports false when the equations are singular, to rounding, in
+// this layout. The error is that of ctx.
+func (s *meshSystem[T]) solve(ctx context.Context, laws []Law[T], gauge []bool) (bool, error) {
+	s.ohms = typicalImpedance(laws)
 	s.matrix.Zero()
 	next := 0
-	s.terms(laws, gauge, ohms, func(_, _ int, value T) {
+	s.terms(laws, gauge, func(_, _ int, value T) {
 		s.matrix.Value[s.slot[next]] += value
 		next++
 	})
-	s.rightSide(laws, gauge)
-	s.equilibrate()
-	if !s.factor.Refactor(s.matrix) {
-		if err := s.factor.Factor(ctx, s.matrix); err != nil {
-			return err
-		}
-	}
-	s.factor.SolveRefined(s.matrix, s.x, s.right)
-	for m := range s.network.Meshes {
-		s.x[m] = scaled(s.x[m], 1/ohms)
-	}
-	for _, x := range s.x {
-		if !finite(x) {
-			return errOverflow
-		}
-	}
-	return nil
+	s.matrix.Equilibrate(s.scale)
+	size := drivingVoltage(laws, s.ohms)
+	residual := func(r []T) { s.residual(r, laws, gauge) }
+	solved, err := s.factor.SolveSystem(ctx, s.matrix, func() sparse.Refinement {
+		refinement := s.factor.Refine(s.x, size, residual)
+		s.zero = zeroBelow(size, refinement)
+		return refinement
+	})
+	return solved, err
 }
 
-var errOverflow = errors.New("the values of the network are so large or so small that the solution overflows")
-
-// equilibrate scales each equation by a power of two so that its largest entry is between 1 and 2.
-func (s *meshSystem[T]) equilibrate() {
-	clear(s.size)
-	for p, i := range s.matrix.Row {
-		s.size[i] = max(s.size[i], magnitude(s.matrix.Value[p]))
-	}
-	for i, size := range s.size {
-		if size == 0 {
-			s.size[i] = 1
+// residual writes what each equation has left at the present unknowns. It goes back to the laws of the branches instead of
+// the matrix, whose entries are sums that have been rounded: small impedances beside large ones keep all their digits.
+func (s *meshSystem[T]) residual(r []T, laws []Law[T], gauge []bool) {
+	meshes := len(s.network.Meshes)
+	clear(s.sum)
+	for b := range laws {
+		law := &laws[b]
+		u := s.voltage(b, law)
+		through, senses := s.through.of(b)
+		for k, m := range through {
+			s.sum[m] = s.sum[m].Minus(u.Signed(senses[k]))
+		}
+		if s.row[b] < 0 {
 			continue
 		}
-		s.size[i] = math.Ldexp(1, -exponent(size))
-		s.right[i] = scaled(s.right[i], s.size[i])
+		row := meshes + s.row[b]
+		if gauge[b] {
+			s.sum[row] = wide.Of[T](0).Minus(u)
+			continue
+		}
+		left := s.current(b).Times(scaled(law.Alpha, 1/s.ohms)).Plus(u.Times(law.Beta))
+		for _, term := range law.Terms {
+			left = left.Plus(s.current(term.Branch).Times(scaled(term.Alpha, 1/s.ohms)))
+			left = left.Plus(s.voltage(term.Branch, &laws[term.Branch]).Times(term.Beta))
+		}
+		s.sum[row] = wide.Of(law.Gamma).Minus(left)
 	}
-	for p, i := range s.matrix.Row {
-		s.matrix.Value[p] = scaled(s.matrix.Value[p], s.size[i])
+	for i := range s.sum {
+		r[i] = scaled(s.sum[i].Round(), s.scale[i])
 	}
+}
+
+// current is the current of a branch, in units of 1 V / ohms.
+func (s *meshSystem[T]) current(b int) wide.Number[T] {
+	var j wide.Number[T]
+	through, senses := s.through.of(b)
+	for k, m := range through {
+		j = j.Plus(s.x[m].Signed(senses[k]))
+	}
+	return j
+}
+
+// voltage is the voltage of a branch, in volts.
+func (s *meshSystem[T]) voltage(b int, law *Law[T]) wide.Number[T] {
+	if r := s.row[b]; r >= 0 {
+		return s.x[len(s.network.Meshes)+r]
+	}
+	return wide.Of(law.Gamma).Minus(s.current(b).Times(scaled(law.Alpha, 1/s.ohms)))
+}
+
+// drivingVoltage is the largest voltage that a law sets, and the largest that the currents which laws set would cause.
+func drivingVoltage[T Scalar](laws []Law[T], ohms float64) float64 {
+	largest := 0.0
+	for b := range laws {
+		law := &laws[b]
+		switch {
+		case law.Gamma == 0:
+		case law.Beta != 0:
+			largest = max(largest, magnitude(law.Gamma)/magnitude(law.Beta))
+		case law.Alpha != 0:
+			largest = max(largest, magnitude(law.Gamma)/magnitude(law.Alpha)*ohms)
+		}
+	}
+	return largest
 }
 
 // typicalImpedance is a power of two near the geometric mean of the impedances: with voltages in volts and currents in

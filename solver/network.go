@@ -76,5 +76,5 @@ func (l *Law[T]) open() bool { return l.Beta == 0 && l.Gamma == 0 && len(l.Terms
 // ideal reports whether the law gives u by itself, without any impedance.
 func (l *Law[T]) ideal() bool { return l.Alpha == 0 && len(l.Terms) == 0 }
 
-// needsRow reports whether the law cannot be solved for u from j alone.
-func (l *Law[T]) needsRow() bool { return l.Row || l.Beta == 0 || len(l.Terms) > 0 }
+// needsRow reports whether the law is not of the form u − Z·j = E, from which u follows without division.
+func (l *Law[T]) needsRow() bool { return l.Row || l.Beta != 1 || len(l.Terms) > 0 }

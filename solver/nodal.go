@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"loopwright/solver/sparse"
+	"loopwright/solver/wide"
 )
 
 // nodalSystem is the second method: node analysis with the current of every branch as a further unknown. Equation k < N
@@ -15,17 +16,24 @@ import (
 // Currents stay unknowns of their own, since eliminating the current of a closed contact loses as many digits as its
 // resistance is smaller than that of its neighbours.
 type nodalSystem[T Scalar] struct {
-	network  *Network[T]
-	slot     []int
-	matrix   *sparse.Matrix[T]
-	factor   *sparse.LU[T]
-	right, x []T
-	ground   []bool
+	network *Network[T]
+	slot    []int
+	matrix  *sparse.Matrix[T]
+	factor  *sparse.LU[T]
+	right   []T
+	x       []wide.Number[T]
+	current []T
+	zero    float64 // what is nothing but rounding, V
+	ground  []bool
 }
 
 func newNodalSystem[T Scalar](ctx context.Context, n *Network[T], laws []Law[T]) (*nodalSystem[T], error) {
 	size := n.Nodes + len(laws)
-	s := &nodalSystem[T]{network: n, right: make([]T, size), x: make([]T, size), ground: make([]bool, n.Nodes)}
+	s := &nodalSystem[T]{
+		network: n,
+		right:   make([]T, size), x: make([]wide.Number[T], size), ground: make([]bool, n.Nodes),
+		current: make([]T, len(laws)),
+	}
 	var rows, columns []int
 	s.stamp(laws, 1, func(row, column int, _ T) {
 		rows, columns = append(rows, row), append(columns, column)
@@ -106,9 +114,9 @@ func (s *nodalSystem[T]) stampLaw(row, b int, alpha, beta T, put func(row, colum
 	put(row, s.network.Branches[b].To, -beta)
 }
 
-// solve gives the node voltages, with 0 V somewhere in each piece, and the branch currents. They stay valid until the
-// next call.
-func (s *nodalSystem[T]) solve(ctx context.Context, laws []Law[T]) (node, current []T, err error) {
+// solve finds the node voltages, with 0 V somewhere in each piece, and the branch currents. It reports false when the
+// equations are singular to rounding. The error is that of ctx.
+func (s *nodalSystem[T]) solve(ctx context.Context, laws []Law[T]) (bool, error) {
 	ohms := typicalImpedance(laws)
 	s.chooseGrounds(laws)
 	s.matrix.Zero()
@@ -117,15 +125,23 @@ func (s *nodalSystem[T]) solve(ctx context.Context, laws []Law[T]) (node, curren
 		s.matrix.Value[s.slot[next]] += value
 		next++
 	})
-	if !s.factor.Refactor(s.matrix) {
-		if err := s.factor.Factor(ctx, s.matrix); err != nil {
-			return nil, nil, err
-		}
+	size := 0.0
+	for _, right := range s.right {
+		size = max(size, magnitude(right))
 	}
-	s.factor.SolveRefined(s.matrix, s.x, s.right)
-	nodes := s.network.Nodes
-	for b := range laws {
-		s.x[nodes+b] = scaled(s.x[nodes+b], 1/ohms)
+	solved, err := s.factor.SolveSystem(ctx, s.matrix, func() sparse.Refinement {
+		refinement := s.factor.SolveRefined(s.matrix, s.x, s.right)
+		s.zero = zeroBelow(size, refinement)
+		return refinement
+	})
+	for b := range s.current {
+		s.current[b] = scaled(orZero(s.x[s.network.Nodes+b].Round(), s.zero), 1/ohms)
 	}
-	return s.x[:nodes], s.x[nodes:], nil
+	return solved, err
+}
+
+// voltage is the voltage between two nodes.
+func (s *nodalSystem[T]) voltage(from, to int) T {
+	total := magnitude(s.x[from].Value) + magnitude(s.x[to].Value)
+	return orZero(s.x[from].Minus(s.x[to]).Round(), max(negligible*total, s.zero))
 }

@@ -6,8 +6,6 @@ import (
 	"fmt"
 	"slices"
 	"time"
-
-	"loopwright/solver/sparse"
 )
 
 // Plan is a network prepared for being solved many times with other laws: its graph, its meshes, the order of
@@ -145,17 +143,12 @@ func (p *Plan[T]) accept(laws []Law[T]) error {
 	return nil
 }
 
-// solveMeshes solves the mesh equations in the compact layout, and with a row for every branch where the compact layout
-// cannot hold the laws, is singular, or would lose digits.
+// solveMeshes solves the mesh equations in the compact layout, or with a row for every branch where the compact layout
+// cannot hold the laws or is singular to rounding because its impedances are too far apart.
 func (p *Plan[T]) solveMeshes(ctx context.Context, laws []Law[T], split *pieces) (*meshSystem[T], error) {
-	var singular *sparse.Singular
 	if p.compact.holds(laws) {
-		err := p.compact.solve(ctx, laws, split.gauge)
-		if err == nil && p.compact.accurate(laws) {
-			return p.compact, nil
-		}
-		if err != nil && !errors.As(err, &singular) {
-			return nil, err
+		if solved, err := p.compact.solve(ctx, laws, split.gauge); solved || err != nil {
+			return p.compact, err
 		}
 	}
 	if p.full == nil {
@@ -165,9 +158,9 @@ func (p *Plan[T]) solveMeshes(ctx context.Context, laws []Law[T], split *pieces)
 		}
 		p.full = full
 	}
-	err := p.full.solve(ctx, laws, split.gauge)
-	if errors.As(err, &singular) {
-		return nil, p.singular(laws)
+	solved, err := p.full.solve(ctx, laws, split.gauge)
+	if !solved && err == nil {
+		err = p.singular(laws)
 	}
 	return p.full, err
 }

@@ -69,12 +69,12 @@ func scalar[T Scalar](x float64) T {
 }
 
 // scaled is x times a real factor.
-func scaled[T Scalar](x T, factor float64) T {
-	switch x := any(x).(type) {
-	case float64:
-		return any(x * factor).(T)
-	case complex128:
-		return any(complex(real(x)*factor, imag(x)*factor)).(T)
+func scaled[T Scalar](x T, factor float64) T { return sparse.Scaled(x, factor) }
+
+// orZero is x, or 0 when |x| is not above the limit.
+func orZero[T Scalar](x T, limit float64) T {
+	if magnitude(x) <= limit {
+		return 0
 	}
 	return x
 }

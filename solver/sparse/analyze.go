@@ -2,11 +2,31 @@ package sparse
 
 import "context"
 
-// Analyze orders the columns of a pattern so that the factors stay sparse.
+// Symbolic is the analysis of a pattern: the order in which its columns are eliminated. It never changes and may be
+// shared between goroutines.
+type Symbolic struct {
+	Pattern *Pattern
+	Order   []int // column Order[k] is eliminated k-th
+}
+
+// Analyze orders the columns of a pattern so that its factors stay sparse when most pivots can be taken from the
+// diagonal: by approximate minimum degree in the graph of A + Aᵀ. The cost is about that of reading the factors' pattern.
+// The error is that of ctx.
 func Analyze(ctx context.Context, p *Pattern) (*Symbolic, error) {
-	order := make([]int, p.N)
-	for k := range order {
-		order[k] = k
+	order, err := newSymmetricQuotient(p).order(ctx)
+	if err != nil {
+		return nil, err
 	}
-	return &Symbolic{Pattern: p, Order: order}, ctx.Err()
+	return &Symbolic{Pattern: p, Order: order}, nil
+}
+
+// AnalyzeColumns orders the columns of a pattern for pivots that may come from any row: by approximate minimum degree in
+// the graph of AᵀA, which is never formed, after Davis, Gilbert, Larimore and Ng, "A column approximate minimum degree
+// ordering algorithm", ACM Transactions on Mathematical Software 30 (2004).
+func AnalyzeColumns(ctx context.Context, p *Pattern) (*Symbolic, error) {
+	order, err := newColumnQuotient(p).order(ctx)
+	if err != nil {
+		return nil, err
+	}
+	return &Symbolic{Pattern: p, Order: order}, nil
 }

@@ -35,3 +35,14 @@ func Magnitude[T Scalar](x T) float64 {
 	}
 	return 0
 }
+
+// Scaled is x times a real factor.
+func Scaled[T Scalar](x T, factor float64) T {
+	switch x := any(x).(type) {
+	case float64:
+		return any(x * factor).(T)
+	case complex128:
+		return any(complex(real(x)*factor, imag(x)*factor)).(T)
+	}
+	return x
+}

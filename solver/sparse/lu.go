@@ -3,18 +3,18 @@ package sparse
 import (
 	"context"
 	"fmt"
+
+	"loopwright/solver/wide"
 )
 
-// Symbolic is the analysis of a pattern: the order in which its columns are eliminated. It never changes and may be
-// shared between goroutines.
-type Symbolic struct {
-	Pattern *Pattern
-	Order   []int // column Order[k] is eliminated k-th
-}
-
-// Threshold is how large a diagonal entry must be, against the largest entry of its column, to be taken as pivot. Low
-// values keep the order of elimination and so the sparsity; iterative refinement recovers what they cost in accuracy.
-const Threshold = 1e-3
+// How large a diagonal entry must be, against the largest entry of its column, to be taken as pivot.
+const (
+	// Lenient keeps to the order of elimination, and so to the sparsity, as long as refinement can recover what it costs in
+	// accuracy.
+	Lenient = 1e-3
+	// Strict takes the largest entry: partial pivoting.
+	Strict = 1
+)
 
 // growthLimit is how small a pivot that Refactor takes over may be against the largest entry below it.
 const growthLimit = 1e-4
@@ -54,8 +54,8 @@ type LU[T Scalar] struct {
 	reach reach
 	sums  []float64
 
-	residual, better []T // of iterative refinement
-	scale            []float64
+	remainder []T // of iterative refinement
+	sum       []wide.Number[T]
 }
 
 // NewLU prepares for matrices on the analysed pattern.
@@ -75,8 +75,9 @@ func (f *LU[T]) Fill() int { return len(f.lRow) + len(f.uRow) + len(f.pivot) }
 
 // Factor computes L·U = P·A·Q column by column with threshold partial pivoting: Gilbert and Peierls, "Sparse partial
 // pivoting in time proportional to arithmetic operations", SIAM Journal on Scientific and Statistical Computing 9 (1988).
-// Diagonal entries are preferred when they are at least Threshold of the largest. The error is *Singular, or that of ctx.
-func (f *LU[T]) Factor(ctx context.Context, a *Matrix[T]) error {
+// Diagonal entries are preferred when they are at least threshold times the largest of their column: Lenient or Strict. The
+// error is *Singular, or that of ctx.
+func (f *LU[T]) Factor(ctx context.Context, a *Matrix[T], threshold float64) error {
 	f.begin(a)
 	for k, column := range f.symbolic.Order {
 		if k%pollEvery == 0 && ctx.Err() != nil {
@@ -84,7 +85,7 @@ func (f *LU[T]) Factor(ctx context.Context, a *Matrix[T]) error {
 		}
 		f.reach.find(a.Row[a.Start[column]:a.Start[column+1]], f.position, f.lStart, f.lRow)
 		f.eliminate(a, column)
-		row := f.choose(column)
+		row := f.choose(column, threshold)
 		if row < 0 || f.onlyRounding(a, column, row) {
 			f.clear()
 			return &Singular{Column: column, Rank: k}
@@ -132,7 +133,7 @@ func (f *LU[T]) eliminate(a *Matrix[T], column int) {
 }
 
 // choose gives the pivot row for the column in x, or −1 when all candidates are zero.
-func (f *LU[T]) choose(column int) int {
+func (f *LU[T]) choose(column int, threshold float64) int {
 	best, largest := -1, 0.0
 	for _, i := range f.reach.found() {
 		if f.position[i] >= 0 {
@@ -145,7 +146,7 @@ func (f *LU[T]) choose(column int) int {
 	if best < 0 {
 		return -1
 	}
-	if f.position[column] < 0 && Magnitude(f.x[column]) >= Threshold*largest {
+	if f.position[column] < 0 && Magnitude(f.x[column]) >= threshold*largest {
 		return column
 	}
 	return best

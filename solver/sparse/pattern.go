@@ -1,5 +1,7 @@
 package sparse
 
+import "math"
+
 // Pattern is where a square matrix may have entries, in compressed columns: the rows of column j are
 // Row[Start[j]:Start[j+1]], ascending and each once.
 type Pattern struct {
@@ -107,5 +109,27 @@ func (a *Matrix[T]) Multiply(y, x []T) {
 		for p := a.Start[j]; p < a.Start[j+1]; p++ {
 			y[a.Row[p]] += a.Value[p] * xj
 		}
+	}
+}
+
+// Equilibrate multiplies each row by the power of two that brings its largest entry between 1 and 2, so that nothing is
+// rounded, and writes the factors to scale. Rows of zeros keep the factor 1.
+func (a *Matrix[T]) Equilibrate(scale []float64) {
+	if len(scale) != a.N {
+		panic(errLength)
+	}
+	clear(scale)
+	for p, i := range a.Row {
+		scale[i] = max(scale[i], Magnitude(a.Value[p]))
+	}
+	for i, largest := range scale {
+		scale[i] = 1
+		if largest > 0 {
+			_, exponent := math.Frexp(largest)
+			scale[i] = math.Ldexp(1, min(1-exponent, 1000))
+		}
+	}
+	for p, i := range a.Row {
+		a.Value[p] = Scaled(a.Value[p], scale[i])
 	}
 }
