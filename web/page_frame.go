@@ -54,6 +54,17 @@ func newFrame(ctx context.Context, picture *draw.Picture, sheet *view.Sheet) (*f
 	return f, nil
 }
 
+// size is how many bytes the frame holds.
+func (f *frame) size() int {
+	total := 0
+	for _, list := range [][]piece{f.groups, f.regions} {
+		for _, p := range list {
+			total += len(p.html) + len(p.id)
+		}
+	}
+	return total
+}
+
 // patch writes what turns a page that shows the frame before into one that shows f: changed and new groups of the
 // drawing in one piece, the ids of those that are gone, and the changed regions. Without a frame before, everything is
 // sent, and the page drops what is not in it.
