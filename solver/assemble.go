@@ -1,6 +1,10 @@
 package solver
 
-import "loopwright/solver/sparse"
+import (
+	"slices"
+
+	"loopwright/solver/sparse"
+)
 
 // solution turns the unknowns into currents and voltages.
 func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solution[T] {
@@ -9,6 +13,7 @@ func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solu
 		Mesh:    make([]T, len(n.Meshes)),
 		Current: make([]T, len(laws)), Voltage: make([]T, len(laws)), Node: make([]T, n.Nodes),
 		FloatingNode: make([]bool, n.Nodes), FloatingBranch: split.cut, Piece: split.of,
+		Laws: slices.Clone(laws),
 	}
 	for m := range solution.Mesh {
 		solution.Mesh[m] = scaled(orZero(s.x[m].Round(), s.zero), 1/s.ohms)

@@ -17,6 +17,9 @@ type Solution[T Scalar] struct {
 	// the voltage is always defined. The piece of the reference is 0.
 	Piece []int
 
+	// Laws are those under which the network was solved.
+	Laws []Law[T]
+
 	Supermeshes []Supermesh
 	Audit       Audit
 	Timing      Timing
