@@ -19,7 +19,7 @@ var Battery = register(&Kind{
 		// IEC 60617-6 and IEEE 315: for each cell a long line, positive, and a short thick one.
 		list := leads(0.48)
 		for _, y := range []float64{-0.48, 0.16} {
-			list = append(list, stroke.Line(-0.8, y, 0.8, y), heavy(stroke.Line(-0.38, y+0.32, 0.38, y+0.32)))
+			list = append(list, stroke.Line(-0.8, y, 0.8, y), thick(stroke.Line(-0.38, y+0.32, 0.38, y+0.32)))
 		}
 		return list
 	},

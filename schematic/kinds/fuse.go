@@ -59,5 +59,5 @@ func fuseLink(closed bool) stroke.List {
 // burst is a small cross where a fuse has melted.
 func burst(y float64) stroke.List {
 	const d = 0.17
-	return stroke.List{heavy(stroke.Line(-d, y-d, d, y+d)), heavy(stroke.Line(-d, y+d, d, y-d))}
+	return stroke.List{thick(stroke.Line(-d, y-d, d, y+d)), thick(stroke.Line(-d, y+d, d, y-d))}
 }

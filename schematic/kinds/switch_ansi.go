@@ -39,7 +39,7 @@ func buttonANSI(look Look, mushroom bool) stroke.List {
 	}
 	bar := stroke.Line(x, -0.95, x, 0.95)
 	if look.Closed {
-		bar.Weight = stroke.Double
+		bar.Weight = stroke.Heavy
 	}
 	list := append(eyes(), bar, stroke.Line(x, 0, cap, 0))
 	if mushroom {
@@ -59,7 +59,7 @@ func contactANSI(look Look, breaks bool) stroke.List {
 	}
 	if look.Closed {
 		bridge := stroke.Line(0, -gap, 0, gap)
-		bridge.Weight = stroke.Double
+		bridge.Weight = stroke.Heavy
 		list = append(list, bridge)
 	}
 	return list
@@ -79,10 +79,12 @@ func bladeANSI(look Look, actuator string) stroke.List {
 	}
 	blade := stroke.Line(0, 0.54, tip.X, tip.Y)
 	if look.Closed {
-		blade.Weight = stroke.Double
+		blade.Weight = stroke.Heavy
 	}
-	at := 0.54 / (0.54 - tip.Y)
-	return append(append(eyes(), blade), workedANSI(actuator, at*tip.X)...)
+	if actuator == "limit" {
+		return append(eyes(), blade, wedge(blade.Points[0], tip))
+	}
+	return append(append(eyes(), blade), workedANSI(actuator, crossing(blade.Points[0], tip).X)...)
 }
 
 // workedANSI is the sign of what works a blade whose middle lies at x.
@@ -90,8 +92,6 @@ func workedANSI(actuator string, x float64) stroke.List {
 	stem := stroke.Line(x, 0, -1.3, 0)
 	end := stroke.Point{X: -1.3}
 	switch actuator {
-	case "limit": // a wedge on the blade
-		return stroke.List{stroke.Line(x, 0.3, x-0.45, 0, x-0.08, -0.3)}
 	case "float": // a ball
 		return stroke.List{stem, stroke.Circle{Center: stroke.Point{X: end.X - 0.3}, Radius: 0.3}}
 	case "pressure": // a dome

@@ -9,15 +9,16 @@ func switchSymbol(look Look) stroke.List {
 		return switchANSI(look)
 	}
 	blade, list := contactIEC(look)
-	return append(list, actuatorIEC(look.Values.Word("actuator"), blade)...)
+	return append(append(list, blade), actuatorIEC(look.Values.Word("actuator"), blade)...)
 }
 
 // hinge is how far the fixed ends of a contact lie from its middle.
 const hinge = 0.8
 
-// contactIEC draws a contact of IEC 60617-7 and says where the middle of its blade is: a make contact stands open to
-// the left, a break contact lies against a stop at the right; either moves to the right when operated.
-func contactIEC(look Look) (middle stroke.Point, list stroke.List) {
+// contactIEC gives the blade of a contact of IEC 60617-7, from its pivot to its tip, and what else is drawn of it. A make
+// contact stands open to the left, a break contact lies against a stop at the right; either moves to the right when
+// operated.
+func contactIEC(look Look) (blade stroke.Path, list stroke.List) {
 	list = leads(hinge)
 	breaks := breaksAtRest(look.Values)
 	if breaks {
@@ -32,12 +33,11 @@ func contactIEC(look Look) (middle stroke.Point, list stroke.List) {
 	case look.Closed:
 		tip = stroke.Point{Y: -hinge}
 	}
-	blade := stroke.Line(0, hinge, tip.X, tip.Y)
+	blade = stroke.Line(0, hinge, tip.X, tip.Y)
 	if look.Closed {
-		blade.Weight = stroke.Double
+		blade.Weight = stroke.Heavy
 	}
-	at := hinge / (hinge - tip.Y) // the part of the blade below the middle of the symbol
-	return stroke.Point{X: at * tip.X}, append(list, blade)
+	return blade, list
 }
 
 // breaksAtRest reports whether a switch conducts at rest and is therefore drawn as a break contact.
@@ -52,12 +52,12 @@ func breaksAtRest(values Filled) bool {
 const head = -1.7
 
 // actuatorIEC draws what operates a contact after IEC 60617-2, at the left, with a dashed link to the blade.
-func actuatorIEC(actuator string, blade stroke.Point) stroke.List {
+func actuatorIEC(actuator string, blade stroke.Path) stroke.List {
+	pivot, tip := blade.Points[0], blade.Points[1]
 	if actuator == "limit" {
-		// IEC 60617-7: a wedge on the blade itself.
-		return stroke.List{stroke.Line(blade.X, 0.3, blade.X-0.45, 0, blade.X-0.08, -0.3)}
+		return stroke.List{wedge(pivot, tip)} // IEC 60617-7: on the blade itself
 	}
-	link := dashed(stroke.Line(head, 0, blade.X, 0))
+	link := dashed(stroke.Line(crossing(pivot, tip).X, 0, head, 0))
 	return append(stroke.List{link}, actuatorHead(actuator)...)
 }
 

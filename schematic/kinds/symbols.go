@@ -55,9 +55,9 @@ func arrowhead(x, tip float64) stroke.Path {
 	return head
 }
 
-// heavy draws a path with the weight of what conducts.
-func heavy(path stroke.Path) stroke.Path {
-	path.Weight = stroke.Heavy
+// thick draws a path a step heavier than the rest.
+func thick(path stroke.Path) stroke.Path {
+	path.Weight = stroke.Medium
 	return path
 }
 
@@ -68,8 +68,17 @@ func dashed(path stroke.Path) stroke.Path {
 	return path
 }
 
-// filled fills a closed path with its ink.
-func filled(path stroke.Path) stroke.Path {
-	path.Filled = true
-	return path
+// wedge is the cam of a limit switch, on the left of a blade from its pivot to its tip.
+func wedge(pivot, tip stroke.Point) stroke.Path {
+	at := func(along, aside float64) stroke.Point {
+		dx, dy := tip.X-pivot.X, tip.Y-pivot.Y
+		length := math.Hypot(dx, dy)
+		return stroke.Point{X: pivot.X + along*dx + aside*dy/length, Y: pivot.Y + along*dy - aside*dx/length}
+	}
+	return stroke.Path{Points: []stroke.Point{at(0.34, 0), at(0.52, 0.42), at(0.7, 0)}}
+}
+
+// crossing is where a blade from a pivot on the axis to its tip lies level with the middle of the symbol.
+func crossing(pivot, tip stroke.Point) stroke.Point {
+	return stroke.Point{X: pivot.Y / (pivot.Y - tip.Y) * tip.X}
 }

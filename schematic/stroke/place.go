@@ -26,14 +26,15 @@ func (p Point) Add(q Point) Point { return Point{p.X + q.X, p.Y + q.Y} }
 func (l List) Placed(at Point, turn int, flip bool) List {
 	move := func(p Point) Point { return p.Turned(turn, flip).Add(at) }
 	placed := make(List, len(l))
+	points := make([]Point, 0, l.corners())
 	for i, shape := range l {
 		switch s := shape.(type) {
 		case Path:
-			moved := make([]Point, len(s.Points))
-			for j, p := range s.Points {
-				moved[j] = move(p)
+			first := len(points)
+			for _, p := range s.Points {
+				points = append(points, move(p))
 			}
-			s.Points = moved
+			s.Points = points[first:len(points):len(points)]
 			placed[i] = s
 		case Circle:
 			s.Center = move(s.Center)
@@ -51,6 +52,17 @@ func (l List) Placed(at Point, turn int, flip bool) List {
 		}
 	}
 	return placed
+}
+
+// corners is the number of points of all paths.
+func (l List) corners() int {
+	sum := 0
+	for _, shape := range l {
+		if path, ok := shape.(Path); ok {
+			sum += len(path.Points)
+		}
+	}
+	return sum
 }
 
 // Box is an upright rectangle on the sheet. The zero Box is empty at the origin.

@@ -12,7 +12,7 @@ const Step = 5.0
 type Point struct{ X, Y float64 }
 
 // Ink is what a shape is drawn with. Its meaning is fixed: black is drawn by people, blue is computed, red is review,
-// yellow is verified at the bench, and faint is the ruling of the paper.
+// yellow is verified at the bench, grey is what the form has printed on it, and faint is the ruling of the paper.
 type Ink uint8
 
 // The inks of the drafting table.
@@ -23,23 +23,24 @@ const (
 	Yellow
 	Faint
 	Paper // the colour of the sheet itself, to keep what lies below from showing through
+	Grey
 )
 
-// Weight is the width of a line, in steps of the line group 0.5 of ISO 128-2.
+// Weight is the width of a line, from the series of ISO 128-2.
 type Weight uint8
 
-// The widths, in millimetres: 0.25, 0.18, 0.35, 0.5 and 0.7. Normal is the zero value.
+// The widths: 0.35, 0.25, 0.5 and 0.7 mm, which is the line group 0.7 with the step between its two. Normal is the zero
+// value.
 const (
 	Normal Weight = iota
 	Fine
 	Medium
 	Heavy
-	Double
 )
 
 // Millimetres is the width of the line on paper.
 func (w Weight) Millimetres() float64 {
-	return [...]float64{0.25, 0.18, 0.35, 0.5, 0.7}[w]
+	return [...]float64{0.35, 0.25, 0.5, 0.7}[w]
 }
 
 // Style is how the outline of a shape is drawn and whether its inside is filled.

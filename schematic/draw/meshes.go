@@ -1,0 +1,156 @@
+package draw
+
+import (
+	"math"
+
+	"loopwright/schematic/cases"
+	"loopwright/schematic/quantity"
+	"loopwright/schematic/stroke"
+	"loopwright/schematic/trace"
+)
+
+// The arrows of mesh currents, in grid steps.
+const (
+	largestArrow  = 2.3
+	smallestArrow = 0.55
+	smallestName  = 0.3  // half the room of a name without an arrow
+	reservedArrow = 0.8  // for which lettering leaves room in a narrow mesh
+	narrowMesh    = 2.6  // a mesh with less room than that
+	arrowClear    = 0.25 // between an arrow and what is around it
+)
+
+// reserveMeshes keeps room for a small arrow in those meshes that lettering could fill.
+func reserveMeshes(drawing *trace.Drawing, o *obstacles) []int {
+	var reserved []int
+	for i := range drawing.Meshes {
+		if mesh := &drawing.Meshes[i]; mesh.Drawn {
+			center, radius := roomIn(mesh, o, narrowMesh)
+			if radius < narrowMesh {
+				reserved = append(reserved, o.add(around(center, reservedArrow+arrowClear)))
+			}
+		}
+	}
+	return reserved
+}
+
+// meshGroups draws the arrow of every mesh that is a face of the drawing, where its mesh leaves most room. Where there is
+// room for nothing, its group stays empty; the margin lists all mesh currents.
+func meshGroups(groups []Group, drawing *trace.Drawing, solved *cases.Case, s scale, o *obstacles) []Group {
+	for i := range drawing.Meshes {
+		mesh := &drawing.Meshes[i]
+		if !mesh.Drawn {
+			continue
+		}
+		group := Group{ID: "mesh-" + mesh.Name, Layer: MeshLayer, Attributes: []Attribute{{"data-mesh", mesh.Name}}}
+		value := ""
+		if solved.Solved {
+			current := rounded(solved.Meshes[i], s.amperes)
+			value = written(current, quantity.Ampere, s.ac)
+			group.Attributes = append(group.Attributes, Attribute{"data-current", siNumber(solved.Meshes[i], s.ac)})
+		}
+		if center, radius := roomIn(mesh, o, largestArrow); radius >= smallestArrow {
+			group.List = meshArrow(center, radius, mesh.Name, value)
+		} else if radius >= smallestName {
+			group.List = appendMeshName(nil, center, mesh.Name, 1.6*radius)
+		}
+		groups = append(groups, group)
+	}
+	return groups
+}
+
+// roomIn finds a centre for the arrow of a mesh, and how large it may be there, up to a limit: its own centre if there
+// is room, else the roomiest place near it, where each step away costs a little. It looks at a grid of places first and
+// then around the best of them.
+func roomIn(mesh *trace.Mesh, o *obstacles, limit float64) (center stroke.Point, radius float64) {
+	center, radius = mesh.Center, o.clearance(mesh.Center, limit+arrowClear, 0)-arrowClear
+	if radius >= limit {
+		return center, limit
+	}
+	best := radius
+	look := func(around stroke.Point, reach int, step float64) {
+		for row := -reach; row <= reach; row++ {
+			for column := -reach; column <= reach; column++ {
+				p := stroke.Point{X: around.X + float64(column)*step, Y: around.Y + float64(row)*step}
+				cost := 0.06 * math.Hypot(p.X-mesh.Center.X, p.Y-mesh.Center.Y)
+				if limit-cost <= best || !inside(p, mesh.Outline) {
+					continue
+				}
+				room := o.clearance(p, limit+arrowClear, best+cost+arrowClear) - arrowClear
+				if room-cost > best+1e-9 {
+					best, center, radius = room-cost, p, room
+				}
+			}
+		}
+	}
+	look(mesh.Center, 3, 1.5)
+	look(center, 1, 0.7)
+	look(center, 1, 0.35)
+	return center, radius
+}
+
+// inside reports whether a point lies within a closed outline, by the number of its lines to the right of the point.
+func inside(p stroke.Point, outline []stroke.Point) bool {
+	in := false
+	for i, a := range outline {
+		b := outline[(i+1)%len(outline)]
+		if (a.Y > p.Y) != (b.Y > p.Y) && p.X < a.X+(p.Y-a.Y)/(b.Y-a.Y)*(b.X-a.X) {
+			in = !in
+		}
+	}
+	return in
+}
+
+// meshArrow draws a clockwise arrow of 300° with the name of the mesh current and, where the circle is wide enough, its
+// value.
+func meshArrow(center stroke.Point, radius float64, name, value string) stroke.List {
+	const start, sweep = 135.0, 285.0
+	style := stroke.Style{Ink: stroke.Blue, Dashed: true, Weight: stroke.Fine}
+	list := stroke.List{stroke.Arc{Center: center, Radius: radius, Start: start, Sweep: sweep, Style: style}}
+	list = append(list, arcHead(center, radius, start+sweep))
+	height := valueHeight(value, radius-0.12)
+	withValue := height > 0
+	y := center.Y
+	if withValue {
+		y -= 0.55 * height
+		list = append(list, stroke.Text{
+			At: stroke.Point{X: center.X, Y: center.Y + 0.75*height}, Text: value, Height: height, Anchor: stroke.Middle,
+			Centred: true, Ink: stroke.Blue,
+		})
+	}
+	return appendMeshName(list, stroke.Point{X: center.X, Y: y}, name, min(0.8, 1.1*radius))
+}
+
+// valueHeight is the height at which a value fits into a circle below the name of its mesh; 0 when it does not fit.
+func valueHeight(value string, radius float64) float64 {
+	const largest, least = 0.6, 0.46
+	if value == "" {
+		return 0
+	}
+	// Half the width of the value, and how far its line reaches below the centre, both in parts of its height.
+	fits := radius / math.Hypot(width(value, false)/2, 1.1)
+	if fits < least {
+		return 0
+	}
+	return min(fits, largest)
+}
+
+// arcHead is the arrowhead at the end of a clockwise arc.
+func arcHead(center stroke.Point, radius, end float64) stroke.Path {
+	const long, half = 0.5, 0.17
+	back := end - long/radius*180/math.Pi
+	tip := onCircle(center, radius, end)
+	head := stroke.Path{Closed: true, Style: stroke.Style{Ink: stroke.Blue, Weight: stroke.Fine, Filled: true}}
+	head.Points = []stroke.Point{tip, onCircle(center, radius+half, back), onCircle(center, radius-half, back)}
+	return head
+}
+
+// appendMeshName sets i with the number of the mesh as its index: mesh m2 has the current i₂.
+func appendMeshName(list stroke.List, at stroke.Point, name string, height float64) stroke.List {
+	letter := stroke.Text{Text: "i", Height: height, Italic: true, Centred: true, Ink: stroke.Blue}
+	index := stroke.Text{Text: name[1:], Height: 0.68 * height, Ink: stroke.Blue}
+	letterWidth := width(letter.Text, false) * letter.Height
+	wide := letterWidth + width(index.Text, false)*index.Height
+	letter.At = stroke.Point{X: at.X - wide/2, Y: at.Y}
+	index.At = stroke.Point{X: letter.At.X + letterWidth + 0.03, Y: at.Y + (capHeight/2+0.16)*height}
+	return append(list, letter, index)
+}
