@@ -20,7 +20,7 @@ func (s *Server) editSheet(w http.ResponseWriter, r *http.Request) error {
 	if err != nil {
 		return err
 	}
-	data, err := readJSON(r)
+	data, err := readBody(r)
 	if err != nil {
 		return err
 	}

@@ -13,7 +13,7 @@ func (s *Server) createKey(w http.ResponseWriter, r *http.Request) error {
 	if _, err := s.opened(r, store.Edit); err != nil {
 		return err
 	}
-	data, err := readJSON(r)
+	data, err := readBody(r)
 	if err != nil {
 		return err
 	}

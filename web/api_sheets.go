@@ -23,7 +23,7 @@ func (s *Server) solveBody(w http.ResponseWriter, r *http.Request) error {
 }
 
 func readSheet(r *http.Request) (*schematic.Sheet, error) {
-	data, err := readJSON(r)
+	data, err := readBody(r)
 	if err != nil {
 		return nil, err
 	}

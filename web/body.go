@@ -6,7 +6,9 @@ import (
 	"fmt"
 	"io"
 	"net/http"
+	"strconv"
 	"strings"
+	"unicode/utf8"
 
 	"github.com/go-json-experiment/json"
 	"github.com/go-json-experiment/json/jsontext"
@@ -14,49 +16,58 @@ import (
 	"loopwright/schematic"
 )
 
-// readJSON reads the body of a request. What is no JSON gives status 400; JSON in which a name is given twice is left to
-// whoever understands it.
-func readJSON(r *http.Request) ([]byte, error) {
+// readBody reads the body of a request, which is to be JSON: in UTF-8, without a byte order mark (RFC 8259, section 8.1).
+// Whether it is JSON shows to whoever understands it.
+func readBody(r *http.Request) ([]byte, error) {
 	data, err := io.ReadAll(r.Body)
+	if tooLarge := (*http.MaxBytesError)(nil); errors.As(err, &tooLarge) {
+		return nil, err
+	}
 	if err != nil {
-		if tooLarge := (*http.MaxBytesError)(nil); errors.As(err, &tooLarge) {
-			return nil, err
-		}
 		return nil, &problem{status: http.StatusBadRequest, message: "The request ended before it was whole; send it again."}
 	}
-	var whole jsontext.Value
-	if err := json.Unmarshal(data, &whole, jsontext.AllowDuplicateNames(true)); err != nil {
-		line := 1
-		if syntax := (*jsontext.SyntacticError)(nil); errors.As(err, &syntax) {
-			line += bytes.Count(data[:min(int(syntax.ByteOffset), len(data))], []byte("\n"))
-		}
-		return nil, &problem{status: http.StatusBadRequest,
-			message: fmt.Sprintf("This is not JSON: reading it stopped in line %d. Send one JSON value in UTF-8.", line)}
+	if !utf8.Valid(data) || bytes.HasPrefix(data, []byte("\ufeff")) {
+		return nil, &problem{status: http.StatusBadRequest, message: "This is not JSON: send it in UTF-8, without a byte order mark."}
 	}
 	return data, nil
 }
 
-// decode reads the fields of an object that readJSON has let pass, and refuses any that the object does not have.
+// decode reads an object, and refuses fields that it does not have.
 func decode(data []byte, to any) error {
 	err := json.Unmarshal(data, to, json.RejectUnknownMembers(true))
-	if err == nil {
-		return nil
-	}
-	refused := &schematic.PlaceError{Message: "this is not an object of the fields that belong here"}
 	var syntax *jsontext.SyntacticError
 	var semantic *json.SemanticError
 	switch {
+	case err == nil:
+		return nil
+	case errors.Is(err, jsontext.ErrDuplicateName) && errors.As(err, &syntax):
+		return &schematic.PlaceError{Place: placeOf(syntax.JSONPointer), Message: "the field is given twice; leave one out"}
 	case errors.As(err, &syntax):
-		refused.Place = strings.TrimPrefix(string(syntax.JSONPointer), "/")
-		refused.Message = "the field is given twice; leave one out"
-	case errors.As(err, &semantic) && semantic.JSONPointer != "":
-		refused.Place = strings.TrimPrefix(string(semantic.JSONPointer), "/")
-		refused.Message = "there is no such field here; leave it out"
-		if !errors.Is(err, json.ErrUnknownName) {
-			refused.Message = fmt.Sprintf("a JSON %s does not belong here", kindName(semantic.JSONKind))
-		}
+		line := 1 + bytes.Count(data[:min(int(syntax.ByteOffset), len(data))], []byte("\n"))
+		return &problem{status: http.StatusBadRequest, place: fmt.Sprint("line ", line), message: "This is not JSON."}
+	case errors.Is(err, json.ErrUnknownName) && errors.As(err, &semantic):
+		return &schematic.PlaceError{Place: placeOf(semantic.JSONPointer), Message: "there is no such field here; leave it out"}
+	case errors.As(err, &semantic):
+		return &schematic.PlaceError{Place: placeOf(semantic.JSONPointer),
+			Message: fmt.Sprintf("a JSON %s does not belong here", kindName(semantic.JSONKind))}
 	}
-	return refused
+	return err
+}
+
+// placeOf writes a pointer as places are written elsewhere: "edits[0].part.kind".
+func placeOf(pointer jsontext.Pointer) string {
+	var place strings.Builder
+	for token := range pointer.Tokens() {
+		if _, err := strconv.Atoi(token); err == nil {
+			place.WriteString("[" + token + "]")
+			continue
+		}
+		if place.Len() > 0 {
+			place.WriteByte('.')
+		}
+		place.WriteString(token)
+	}
+	return place.String()
 }
 
 // kindName says what sort of JSON value it is.

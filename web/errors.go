@@ -44,12 +44,15 @@ func problemOf(err error) *problem {
 	var known *problem
 	var conflict *schematic.ConflictError
 	var place *schematic.PlaceError
+	var syntax *schematic.SyntaxError
 	var tooLarge *http.MaxBytesError
 	switch {
 	case errors.As(err, &known):
 		return known
 	case errors.As(err, &conflict):
 		return &problem{status: http.StatusConflict, message: conflict.Message}
+	case errors.As(err, &syntax):
+		return &problem{status: http.StatusBadRequest, message: syntax.Message, place: syntax.Place}
 	case errors.As(err, &place):
 		return &problem{status: http.StatusUnprocessableEntity, message: place.Message, place: place.Place}
 	case errors.As(err, &tooLarge):
@@ -105,7 +108,7 @@ func (s *Server) writeProblem(w http.ResponseWriter, _ *http.Request, p *problem
 	}
 	body := struct {
 		Error    text `json:"error"`
-		Revision int  `json:"revision,omitempty"`
+		Revision int  `json:"revision,omitzero"`
 	}{text{p.message, p.place}, p.revision}
 	if p.status == http.StatusServiceUnavailable {
 		w.Header().Set("Retry-After", "2")

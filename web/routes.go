@@ -96,9 +96,9 @@ func (s *Server) notFound(w http.ResponseWriter, r *http.Request) {
 // methodNotAllowed says with which methods the address can be used.
 func (s *Server) methodNotAllowed(routes chi.Routes) http.HandlerFunc {
 	return func(w http.ResponseWriter, r *http.Request) {
-		for _, method := range []string{"GET", "HEAD", "POST", "DELETE"} {
+		for method, answered := range map[string]string{"GET": "GET, HEAD", "POST": "POST", "DELETE": "DELETE"} {
 			if routes.Match(chi.NewRouteContext(), method, r.URL.Path) {
-				w.Header().Add("Allow", method)
+				w.Header().Add("Allow", answered)
 			}
 		}
 		s.refuse(w, r, &problem{status: http.StatusMethodNotAllowed, message: "This address does not take " + r.Method + " requests."})

@@ -14,6 +14,7 @@ import (
 	"runtime"
 	"time"
 
+	"golang.org/x/sync/semaphore"
 	"golang.org/x/sync/singleflight"
 
 	"loopwright/web/recent"
@@ -36,13 +37,15 @@ type Server struct {
 	log        *slog.Logger
 	solveLimit time.Duration
 	now        func() time.Time
+	waitLimit  time.Duration // for a processor to become free
 	pingEvery  time.Duration // between signs of life on a stream of events
 
 	router    http.Handler
 	meters    *meters
 	solutions *recent.Map[solutionKey, *solvedSheet]
 	solving   singleflight.Group
-	slots     chan struct{} // one for each solution that may be worked out at the same time
+	frames    *recent.Map[frameKey, *frame]
+	slots     *semaphore.Weighted // one for each solution that may be worked out at the same time
 	ending    context.Context
 	end       context.CancelFunc
 }
@@ -57,10 +60,12 @@ func New(config Config) (*Server, error) {
 		log:        config.Log,
 		solveLimit: config.SolveLimit,
 		now:        config.Now,
+		waitLimit:  10 * time.Second,
 		pingEvery:  15 * time.Second,
 		meters:     newMeters(),
 		solutions:  recent.New[solutionKey, *solvedSheet](mostSolved),
-		slots:      make(chan struct{}, runtime.GOMAXPROCS(0)),
+		frames:     recent.New[frameKey, *frame](mostFrames),
+		slots:      semaphore.NewWeighted(int64(runtime.GOMAXPROCS(0))),
 	}
 	if s.log == nil {
 		s.log = slog.New(slog.DiscardHandler)

@@ -62,17 +62,17 @@ func (s *Server) solved(ctx context.Context, id store.ID, revision int) (*solved
 }
 
 // solve works out all cases of a sheet within the time that the server allows. As many solutions as there are
-// processors are worked out at once; the others wait, and their time runs.
+// processors are worked out at once; the others wait for a while.
 func (s *Server) solve(ctx context.Context, sheet *schematic.Sheet) (result *cases.Result, err error) {
-	limited, cancel := context.WithTimeout(ctx, s.solveLimit)
+	waiting, cancel := context.WithTimeout(ctx, s.waitLimit)
 	defer cancel()
-	select {
-	case s.slots <- struct{}{}:
-		defer func() { <-s.slots }()
-	case <-limited.Done():
+	if err := s.slots.Acquire(waiting, 1); err != nil {
 		return nil, &problem{status: http.StatusServiceUnavailable,
 			message: "The server is busy with other solutions; try again in a moment."}
 	}
+	defer s.slots.Release(1)
+	limited, cancel := context.WithTimeout(ctx, s.solveLimit)
+	defer cancel()
 	// The work may run outside of any handler, where a panic would end the server.
 	defer func() {
 		if cause := recover(); cause != nil {

@@ -125,8 +125,8 @@ func (s *Store) Share(ctx context.Context, editKey string, role Role, name strin
 	until := sql.NullInt64{Int64: expires.UnixMilli(), Valid: !expires.IsZero()}
 	err = s.do(ctx, func(g *group) error {
 		var taken bool
-		err := g.QueryRow("SELECT EXISTS (SELECT 1 FROM keys WHERE sheet = ? AND name = ? AND revoked IS NULL)", sheet, name).
-			Scan(&taken)
+		err := g.queryRow("SELECT EXISTS (SELECT 1 FROM keys WHERE sheet = ? AND name = ? AND revoked IS NULL)",
+			[]any{sheet, name}, &taken)
 		if err != nil {
 			return err
 		}
@@ -142,7 +142,7 @@ func (s *Store) Share(ctx context.Context, editKey string, role Role, name strin
 }
 
 func (s *Store) insertKey(g *group, key string, sheet ID, role Role, name string, salt []byte, expires sql.NullInt64) error {
-	_, err := g.Exec("INSERT INTO keys (hash, sheet, role, name, salt, created, expires) VALUES (?, ?, ?, ?, ?, ?, ?)",
+	_, err := g.exec("INSERT INTO keys (hash, sheet, role, name, salt, created, expires) VALUES (?, ?, ?, ?, ?, ?, ?)",
 		hashOf(key), sheet, role, name, salt, s.Now().UnixMilli(), expires)
 	return err
 }
@@ -208,7 +208,7 @@ func (s *Store) Revoke(ctx context.Context, editKey, name string) error {
 		return ErrNotFound
 	}
 	return s.do(ctx, func(g *group) error {
-		result, err := g.Exec("UPDATE keys SET revoked = ? WHERE sheet = ? AND name = ? AND revoked IS NULL",
+		result, err := g.exec("UPDATE keys SET revoked = ? WHERE sheet = ? AND name = ? AND revoked IS NULL",
 			s.Now().UnixMilli(), sheet, name)
 		if err != nil {
 			return err

@@ -6,7 +6,6 @@ import (
 	"encoding/json"
 	"errors"
 	"fmt"
-	"maps"
 
 	"github.com/google/uuid"
 
@@ -24,8 +23,15 @@ type Batch struct {
 
 // Answer is what an accepted batch is answered.
 type Answer struct {
-	Revision int            `json:"revision"`
-	Made     schematic.Made `json:"made"`
+	Revision int  `json:"revision"`
+	Made     Made `json:"made"`
+}
+
+// Made tells what a batch brought about beside what it said; see schematic.Made. No list is nil.
+type Made struct {
+	Refs   []string `json:"refs"`
+	Wires  []string `json:"wires"`
+	Joined []string `json:"joined"`
 }
 
 // Commit applies a batch and returns once it is durable. A batch that has been accepted before changes nothing and gives
@@ -33,14 +39,38 @@ type Answer struct {
 // edits suppose, and its answer holds the newest revision; *schematic.PlaceError says that they make no sense. Each
 // undo, each redo, and each run of edits between them makes a revision, unless it changes nothing.
 func (s *Store) Commit(ctx context.Context, id ID, batch Batch) (Answer, error) {
-	// What is not in memory yet is loaded here, so that the writer does not wait for it.
-	if _, _, err := s.Sheet(ctx, id); err != nil {
+	for {
+		answer, err := s.tryCommit(ctx, id, batch)
+		if !errors.Is(err, errMoved) {
+			return answer, err
+		}
+	}
+}
+
+// errMoved says that a sheet has got another revision since a batch was planned for it.
+var errMoved = errors.New("the sheet has moved on")
+
+// tryCommit plans a batch for the newest revision, which can take long and need not hold up anybody, and has it written.
+func (s *Store) tryCommit(ctx context.Context, id ID, batch Batch) (Answer, error) {
+	current, err := s.newest(ctx, s.reads, id)
+	if err != nil {
+		return Answer{}, err
+	}
+	next, err := current.plan(ctx, s.reads, id, batch)
+	if r := (refused{}); errors.As(err, &r) {
+		// What was accepted before may be impossible by now: its part is there already.
+		if answer, err := s.answered(ctx, id, batch.ID); !errors.Is(err, sql.ErrNoRows) {
+			return answer, err
+		}
+		return Answer{Revision: current.revision}, r.error
+	}
+	if err != nil {
 		return Answer{}, err
 	}
 	var answer Answer
-	err := s.do(ctx, func(g *group) error {
+	err = s.do(ctx, func(g *group) error {
 		var err error
-		answer, err = s.apply(g, id, batch)
+		answer, err = s.apply(g, id, batch, next)
 		return err
 	})
 	if err != nil && ctx.Err() != nil {
@@ -49,11 +79,15 @@ func (s *Store) Commit(ctx context.Context, id ID, batch Batch) (Answer, error) 
 	return answer, err
 }
 
-// apply works out what a batch makes of its sheet and writes that down.
-func (s *Store) apply(g *group, id ID, batch Batch) (Answer, error) {
-	answer, found, err := answered(g, id, batch.ID)
-	if found || err != nil {
-		return answer, err
+// quick is up to which weight of its sheet a batch is planned by the writer itself when another came before it.
+const quick = 2_000
+
+// apply writes a batch, planned anew when the sheet has another revision than it was planned for.
+func (s *Store) apply(g *group, id ID, batch Batch, next *plan) (Answer, error) {
+	var stored []byte
+	err := g.queryRow("SELECT answer FROM batches WHERE sheet = ? AND id = ?", []any{id, batch.ID.String()}, &stored)
+	if !errors.Is(err, sql.ErrNoRows) {
+		return readAnswer(stored, err)
 	}
 	current := g.states[id]
 	if current == nil {
@@ -61,60 +95,54 @@ func (s *Store) apply(g *group, id ID, batch Batch) (Answer, error) {
 			return Answer{}, err
 		}
 	}
-	tail, err := current.tail(g, id, batch)
-	if err != nil {
-		return Answer{}, err
+	if current.revision != next.base {
+		if current.weight() > quick {
+			return Answer{}, refused{errMoved}
+		}
+		if next, err = current.plan(context.Background(), g, id, batch); err != nil {
+			return Answer{Revision: current.revision}, err
+		}
 	}
-	next := plan{sheet: current.sheet, revision: current.revision, tail: tail}
-	if err := next.take(batch); err != nil {
-		return Answer{Revision: current.revision}, refused{err}
-	}
-	answer = Answer{Revision: next.revision, Made: next.made}
+	answer := Answer{Revision: next.revision, Made: next.made}
+	return answer, s.insertPlan(g, id, batch, next, answer)
+}
+
+// insertPlan writes what a batch makes of a sheet.
+func (s *Store) insertPlan(g *group, id ID, batch Batch, next *plan, answer Answer) error {
 	if err := s.insertBatch(g, id, batch, answer); err != nil {
-		return Answer{}, err
+		return err
 	}
 	for _, entry := range next.entries {
 		if err := insertEntry(g, id, batch.ID, entry); err != nil {
-			return Answer{}, err
+			return err
 		}
 	}
-	if next.revision == current.revision {
-		return answer, nil
+	if next.revision == next.base {
+		return nil
 	}
-	if next.revision/between > current.revision/between {
+	if next.revision/between > next.base/between {
 		if err := insertSnapshot(g, id, next.revision, schematic.Encode(next.sheet)); err != nil {
-			return Answer{}, err
+			return err
 		}
 	}
-	g.states[id] = current.followed(next, batch.Author)
+	g.states[id] = next.state(batch.Author)
 	g.after = append(g.after, func() { s.notices.tell(id, next.revision) })
-	return answer, setRevision(g, id, next.revision)
+	_, err := g.exec("UPDATE sheets SET revision = ? WHERE id = ?", next.revision, id)
+	return err
 }
 
-// followed is the state that comes of a plan.
-func (s *state) followed(next plan, author string) *state {
-	tails := s.tails
-	if next.tail != nil {
-		tails = maps.Clone(tails)
-		if tails == nil {
-			tails = make(map[string][]schematic.Entry)
-		}
-		tails[author] = next.tail
-	}
-	return &state{sheet: next.sheet, revision: next.revision, tails: tails}
-}
-
-// answered gives the answer of a batch that has been accepted before.
-func answered(g *group, id ID, batch uuid.UUID) (answer Answer, found bool, err error) {
+// answered gives the answer of a batch that has been accepted before; else sql.ErrNoRows.
+func (s *Store) answered(ctx context.Context, id ID, batch uuid.UUID) (Answer, error) {
 	var stored []byte
-	err = g.QueryRow("SELECT answer FROM batches WHERE sheet = ? AND id = ?", id, batch.String()).Scan(&stored)
-	if errors.Is(err, sql.ErrNoRows) {
-		return Answer{}, false, nil
-	}
+	err := s.reads.QueryRowContext(ctx, "SELECT answer FROM batches WHERE sheet = ? AND id = ?", id, batch.String()).Scan(&stored)
+	return readAnswer(stored, err)
+}
+
+func readAnswer(stored []byte, err error) (answer Answer, _ error) {
 	if err != nil {
-		return Answer{}, false, err
+		return Answer{}, err
 	}
-	return answer, true, json.Unmarshal(stored, &answer)
+	return answer, json.Unmarshal(stored, &answer)
 }
 
 func (s *Store) insertBatch(g *group, id ID, batch Batch, answer Answer) error {
@@ -122,7 +150,7 @@ func (s *Store) insertBatch(g *group, id ID, batch Batch, answer Answer) error {
 	if err != nil {
 		return err
 	}
-	_, err = g.Exec("INSERT INTO batches (sheet, id, author, edits, at, answer) VALUES (?, ?, ?, ?, ?, ?)",
+	_, err = g.exec("INSERT INTO batches (sheet, id, author, edits, at, answer) VALUES (?, ?, ?, ?, ?, ?)",
 		id, batch.ID.String(), batch.Author, string(batch.Record), s.Now().UnixMilli(), string(stored))
 	return err
 }
@@ -133,14 +161,9 @@ func insertEntry(g *group, id ID, batch uuid.UUID, entry schematic.Entry) error 
 		return err
 	}
 	target := sql.NullInt64{Int64: int64(entry.Of), Valid: entry.Do != edited}
-	_, err = g.Exec(`INSERT INTO log (sheet, revision, batch, author, act, target, change, format)
+	_, err = g.exec(`INSERT INTO log (sheet, revision, batch, author, act, target, change, format)
 		VALUES (?, ?, ?, ?, ?, ?, ?, ?)`,
 		id, entry.Revision, batch.String(), entry.Author, entry.Do, target, string(change), schematic.Format)
-	return err
-}
-
-func setRevision(g *group, id ID, revision int) error {
-	_, err := g.Exec("UPDATE sheets SET revision = ? WHERE id = ?", revision, id)
 	return err
 }
 

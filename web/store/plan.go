@@ -2,8 +2,11 @@ package store
 
 import (
 	"context"
+	"errors"
 	"fmt"
 	"slices"
+	"strconv"
+	"strings"
 
 	"loopwright/schematic"
 )
@@ -15,31 +18,56 @@ const (
 	redone = "redo"
 )
 
-// reach is how many of an author's log entries undo and redo look back on.
+// reach is how many of an author's log entries undo and redo look back on, at least.
 const reach = 1000
 
-// plan is what a batch makes of a sheet, as far as it has been taken.
+// plan is what a batch makes of a sheet.
 type plan struct {
+	base     int // the revision that it was planned for
 	sheet    *schematic.Sheet
 	revision int
-	made     schematic.Made
+	made     Made
 	entries  []schematic.Entry
-	tail     []schematic.Entry // the author's last entries; nil as long as nobody needs them
+	tails    map[string][]schematic.Entry // of all authors, before the batch
+	tail     []schematic.Entry            // of the author, with the batch; nil as long as nobody needs it
 }
 
-// tail gives the last log entries of a batch's author when they are in memory or the batch reverts something.
-func (s *state) tail(from querier, id ID, batch Batch) ([]schematic.Entry, error) {
-	tail, known := s.tails[batch.Author]
-	if known || !slices.ContainsFunc(batch.Edits, reverts) {
-		return tail, nil
+// plan works out what a batch makes of a state. What makes no sense is an error of type refused.
+func (s *state) plan(ctx context.Context, from querier, id ID, batch Batch) (*plan, error) {
+	next := &plan{base: s.revision, sheet: s.sheet, revision: s.revision, tails: s.tails, tail: slices.Clip(s.tails[batch.Author]),
+		made: Made{Refs: []string{}, Wires: []string{}, Joined: []string{}}}
+	if next.tail == nil && slices.ContainsFunc(batch.Edits, reverts) {
+		tail, err := tailOf(ctx, from, id, batch.Author, s.revision)
+		if err != nil {
+			return nil, err
+		}
+		next.tail = append([]schematic.Entry{}, tail...)
 	}
-	tail, err := entriesOf(from.QueryContext(context.Background(), `SELECT revision, author, act, target, change FROM
-		(SELECT * FROM log WHERE sheet = ? AND author = ? ORDER BY revision DESC LIMIT ?) ORDER BY revision`,
-		id, batch.Author, reach))
-	if tail == nil {
-		tail = []schematic.Entry{}
+	if err := next.take(batch); err != nil {
+		return nil, refused{err}
 	}
-	return tail, err
+	return next, nil
+}
+
+// tailOf reads the last log entries of an author, up to a revision.
+func tailOf(ctx context.Context, from querier, id ID, author string, revision int) ([]schematic.Entry, error) {
+	return entriesOf(from.QueryContext(ctx, `SELECT revision, author, act, target, change FROM
+		(SELECT * FROM log WHERE sheet = ? AND author = ? AND revision <= ? ORDER BY revision DESC LIMIT ?) ORDER BY revision`,
+		id, author, revision, reach))
+}
+
+// state is the sheet after the batch of an author.
+func (p *plan) state(author string) *state {
+	next := &state{sheet: p.sheet, revision: p.revision, tails: p.tails}
+	if p.tail != nil {
+		next.tails = map[string][]schematic.Entry{author: p.tail}
+		for other, tail := range p.tails {
+			if other != author {
+				next.tails[other] = tail
+			}
+		}
+	}
+	return next
 }
 
 func reverts(edit schematic.Edit) bool { return edit.Do == undone || edit.Do == redone }
@@ -50,24 +78,39 @@ func (p *plan) take(batch Batch) error {
 		return &schematic.ConflictError{Message: fmt.Sprintf(
 			"the edit was made on revision %d, but the sheet is at revision %d; load it again", batch.Base, p.revision)}
 	}
-	for rest := batch.Edits; len(rest) > 0; {
-		var err error
-		if reverts(rest[0]) {
-			err = p.revert(batch.Author, rest[0].Do)
-			rest = rest[1:]
-		} else {
-			run := slices.IndexFunc(rest, reverts)
-			if run < 0 {
-				run = len(rest)
+	for start, end := 0, 0; start < len(batch.Edits); start = end {
+		first := batch.Edits[start]
+		if reverts(first) {
+			end = start + 1
+			if err := p.revert(batch.Author, first.Do); err != nil {
+				return err
 			}
-			err = p.edit(batch.Author, rest[:run])
-			rest = rest[run:]
+			continue
 		}
-		if err != nil {
-			return err
+		end = len(batch.Edits)
+		if run := slices.IndexFunc(batch.Edits[start:], reverts); run >= 0 {
+			end = start + run
+		}
+		if err := p.edit(batch.Author, batch.Edits[start:end]); err != nil {
+			return shifted(err, start)
 		}
 	}
 	return bounded(p.sheet)
+}
+
+// shifted counts the place of an error, "edits[2].part", from the beginning of the batch: the edits of a run count from
+// its own.
+func shifted(err error, start int) error {
+	var place *schematic.PlaceError
+	if !errors.As(err, &place) {
+		return err
+	}
+	number, rest, found := strings.Cut(strings.TrimPrefix(place.Place, "edits["), "]")
+	index, malformed := strconv.Atoi(number)
+	if !found || malformed != nil {
+		return err
+	}
+	return &schematic.PlaceError{Place: fmt.Sprintf("edits[%d]%s", start+index, rest), Message: place.Message}
 }
 
 func (p *plan) edit(author string, edits []schematic.Edit) error {
@@ -105,6 +148,9 @@ func (p *plan) enter(sheet *schematic.Sheet, entry schematic.Entry) {
 	entry.Revision = p.revision
 	p.entries = append(p.entries, entry)
 	if p.tail != nil {
-		p.tail = append(p.tail[max(0, len(p.tail)+1-reach):len(p.tail):len(p.tail)], entry)
+		if len(p.tail) >= 2*reach {
+			p.tail = slices.Clone(p.tail[len(p.tail)-reach:])
+		}
+		p.tail = append(p.tail, entry)
 	}
 }

@@ -19,8 +19,7 @@ const (
 // between is how many revisions lie between two snapshots of a sheet.
 const between = 50
 
-// state is a sheet at its newest revision, as it is held in memory. It is not changed once it is made, but for tails,
-// which only the writer touches.
+// state is a sheet at its newest revision, as it is held in memory. It is not changed once it is made.
 type state struct {
 	sheet    *schematic.Sheet
 	revision int
@@ -46,7 +45,7 @@ func (s *Store) Create(ctx context.Context, sheet *schematic.Sheet) (id ID, edit
 	editKey = newKey()
 	content := schematic.Encode(sheet)
 	err = s.do(ctx, func(g *group) error {
-		result, err := g.Exec("INSERT INTO sheets (revision, created) VALUES (1, ?)", s.Now().UnixMilli())
+		result, err := g.exec("INSERT INTO sheets (revision, created) VALUES (1, ?)", s.Now().UnixMilli())
 		if err != nil {
 			return err
 		}
@@ -86,7 +85,7 @@ func bounded(sheet *schematic.Sheet) error {
 }
 
 func insertSnapshot(g *group, id ID, revision int, content []byte) error {
-	_, err := g.Exec("INSERT INTO snapshots (sheet, revision, content) VALUES (?, ?, ?)", id, revision, string(content))
+	_, err := g.exec("INSERT INTO snapshots (sheet, revision, content) VALUES (?, ?, ?)", id, revision, string(content))
 	return err
 }
 
@@ -95,9 +94,6 @@ func (s *Store) Sheet(ctx context.Context, id ID) (*schematic.Sheet, int, error)
 	current, err := s.newest(ctx, s.reads, id)
 	if err != nil {
 		return nil, 0, err
-	}
-	if known, ok := s.sheets.Get(id); !ok || known.revision < current.revision {
-		s.sheets.Put(id, current, current.weight())
 	}
 	return current.sheet, current.revision, nil
 }
@@ -131,7 +127,16 @@ func (s *Store) newest(ctx context.Context, from querier, id ID) (*state, error)
 	if err != nil {
 		return nil, err
 	}
-	return &state{sheet: sheet, revision: revision}, nil
+	current := &state{sheet: sheet, revision: revision}
+	s.remember(id, current)
+	return current, nil
+}
+
+// remember keeps a durable state in memory, unless a newer one is there.
+func (s *Store) remember(id ID, current *state) {
+	if known, ok := s.sheets.Get(id); !ok || known.revision < current.revision {
+		s.sheets.Put(id, current, current.weight())
+	}
 }
 
 func newestRevision(ctx context.Context, from querier, id ID) (int, error) {

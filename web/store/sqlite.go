@@ -32,7 +32,7 @@ func openSQLite(ctx context.Context, name string) (writes, reads *sql.DB, err er
 	if err := makeFile(name); err != nil {
 		return nil, nil, err
 	}
-	writes, err = sql.Open("sqlite", address(name, "&_txlock=immediate"))
+	writes, err = sql.Open("sqlite", address(name, ""))
 	if err != nil {
 		return nil, nil, fmt.Errorf("opening the database %s: %w", name, err)
 	}

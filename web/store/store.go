@@ -41,9 +41,11 @@ type Store struct {
 
 	reads    *sql.DB
 	writes   *sql.DB
+	writer   *writer
 	jobs     chan *job
 	closing  chan struct{}
 	finished sync.WaitGroup
+	close    func() error
 	sheets   *recent.Map[ID, *state]
 	notices  notices
 }
@@ -57,24 +59,30 @@ func Open(ctx context.Context, name string) (*Store, error) {
 	if err != nil {
 		return nil, err
 	}
+	connection, err := writes.Conn(ctx)
+	if err != nil {
+		return nil, errors.Join(fmt.Errorf("opening the database %s: %w", name, err), reads.Close(), writes.Close())
+	}
 	s := &Store{
 		Now:     time.Now,
 		reads:   reads,
 		writes:  writes,
+		writer:  &writer{connection, make(map[string]*sql.Stmt)},
 		jobs:    make(chan *job),
 		closing: make(chan struct{}),
 		sheets:  recent.New[ID, *state](held),
 	}
 	s.finished.Go(s.write)
+	s.close = sync.OnceValue(func() error {
+		close(s.closing)
+		s.finished.Wait()
+		return errors.Join(s.writer.Close(), s.writes.Close(), s.reads.Close())
+	})
 	return s, nil
 }
 
-// Close answers what has been taken on, refuses everything after, and closes the database. It must be called once.
-func (s *Store) Close() error {
-	close(s.closing)
-	s.finished.Wait()
-	return errors.Join(s.writes.Close(), s.reads.Close())
-}
+// Close answers what has been taken on, refuses everything after, and closes the database.
+func (s *Store) Close() error { return s.close() }
 
 // Ready reports whether the database answers to reading and to writing.
 func (s *Store) Ready(ctx context.Context) error {

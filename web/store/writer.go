@@ -5,6 +5,7 @@ import (
 	"database/sql"
 	"errors"
 	"fmt"
+	"runtime/debug"
 )
 
 // mostJobs is how many writes share one transaction at most.
@@ -18,7 +19,7 @@ type job struct {
 
 // group is one transaction, and what it will have changed once it is durable.
 type group struct {
-	*sql.Tx
+	*writer
 	states map[ID]*state
 	after  []func() // called in order once the transaction is durable
 }
@@ -94,28 +95,89 @@ func (s *Store) commit(jobs []*job) {
 
 // together runs jobs in one transaction. It gives the refusal of each, or an error when nothing has been written.
 func (s *Store) together(jobs []*job) ([]error, error) {
-	tx, err := s.writes.BeginTx(context.Background(), nil)
+	g := &group{writer: s.writer, states: make(map[ID]*state)}
+	answers := make([]error, len(jobs))
+	err := s.writer.transaction(func() error {
+		for i, j := range jobs {
+			err := j.attempt(g)
+			if r := (refused{}); err != nil && !errors.As(err, &r) {
+				return err
+			}
+			answers[i] = err
+		}
+		return nil
+	})
 	if err != nil {
 		return nil, err
 	}
-	defer tx.Rollback() // does nothing after a commit
-	g := &group{Tx: tx, states: make(map[ID]*state)}
-	answers := make([]error, len(jobs))
-	for i, j := range jobs {
-		err := j.run(g)
-		if r := (refused{}); err != nil && !errors.As(err, &r) {
-			return nil, err
-		}
-		answers[i] = err
-	}
-	if err := tx.Commit(); err != nil {
-		return nil, err
-	}
 	for id, state := range g.states {
-		s.sheets.Put(id, state, state.weight())
+		s.remember(id, state)
 	}
 	for _, after := range g.after {
 		after()
 	}
 	return answers, nil
+}
+
+// attempt runs a job. A panic is an error of that job alone: the goroutine serves everybody.
+func (j *job) attempt(g *group) (err error) {
+	defer func() {
+		if cause := recover(); cause != nil {
+			err = fmt.Errorf("panic: %v\n%s", cause, debug.Stack())
+		}
+	}()
+	return j.run(g)
+}
+
+// writer is the one connection that writes. Only the goroutine that makes all writes uses it. It prepares a statement
+// once, since that takes as long as to run it.
+type writer struct {
+	*sql.Conn
+	prepared map[string]*sql.Stmt
+}
+
+// transaction runs a function between BEGIN and COMMIT. The transaction is open to writing from its start, because one
+// that begins by reading can be refused later.
+func (w *writer) transaction(run func() error) error {
+	if _, err := w.exec("BEGIN IMMEDIATE"); err != nil {
+		return err
+	}
+	err := run()
+	if err == nil {
+		_, err = w.exec("COMMIT")
+	}
+	if err != nil {
+		// After some errors the database has rolled back already, and says so.
+		w.exec("ROLLBACK")
+	}
+	return err
+}
+
+func (w *writer) exec(query string, values ...any) (sql.Result, error) {
+	statement, err := w.statement(query)
+	if err != nil {
+		return nil, err
+	}
+	return statement.Exec(values...)
+}
+
+// queryRow reads one row into the targets; sql.ErrNoRows when there is none.
+func (w *writer) queryRow(query string, values []any, targets ...any) error {
+	statement, err := w.statement(query)
+	if err != nil {
+		return err
+	}
+	return statement.QueryRow(values...).Scan(targets...)
+}
+
+func (w *writer) statement(query string) (*sql.Stmt, error) {
+	if known := w.prepared[query]; known != nil {
+		return known, nil
+	}
+	statement, err := w.PrepareContext(context.Background(), query)
+	if err != nil {
+		return nil, err
+	}
+	w.prepared[query] = statement
+	return statement, nil
 }
