@@ -180,7 +180,7 @@ func TestTheServerEndsStreamsAndFinishesRequests(t *testing.T) {
 	if got := l.next(); got != "end" {
 		t.Errorf("the stream goes on with %q", got)
 	}
-	if err := <-ended; err != nil && !strings.Contains(err.Error(), "Server closed") {
+	if err := <-ended; err != nil {
 		t.Errorf("the server ends with %v", err)
 	}
 	if _, err := net.Dial("tcp", port.Addr().String()); err == nil {

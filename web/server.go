@@ -109,7 +109,9 @@ func (s *Server) Serve(ctx context.Context, listener, forMetrics net.Listener) e
 	last, cancel := context.WithTimeout(context.WithoutCancel(ctx), lastWords)
 	defer cancel()
 	for server := range servers {
-		err = errors.Join(err, server.Shutdown(last))
+		if late := server.Shutdown(last); late != nil {
+			err = errors.Join(err, late, server.Close())
+		}
 	}
 	return err
 }

@@ -15,6 +15,7 @@ import (
 	"github.com/google/uuid"
 
 	"loopwright/schematic"
+	"loopwright/schematic/kinds"
 )
 
 // fresh opens a store that holds one sheet without parts.
@@ -260,26 +261,37 @@ func TestUndoWorksAfterTheStoreHasBeenOpenedAgain(t *testing.T) {
 }
 
 func TestASheetThatIsTooLargeIsRefused(t *testing.T) {
-	s, id, _ := fresh(t)
-	var edits []string
-	for n := range mostParts {
-		edits = append(edits, fmt.Sprintf(`{"do": "add", "part": {"ref": "R%d", "kind": "resistor", "at": [%d, %d]}}`,
-			n, 4*(n%100), 6*(n/100)))
+	resistor, err := kinds.Lookup("resistor")
+	if err != nil {
+		t.Fatal(err)
 	}
-	commit(t, s, id, batch(t, 1, "ann", edits...))
-	_, err := s.Commit(context.Background(), id, batch(t, 2, "ann", add(9999)))
+	sheet := schematic.New("Marshalling cabinet")
+	for n := range mostParts {
+		sheet.Parts = append(sheet.Parts, schematic.Part{Ref: fmt.Sprint("R", n), Kind: resistor, At: schematic.Point{X: 4 * (n % 100), Y: 6 * (n / 100)}})
+	}
+	s := open(t, filepath.Join(t.TempDir(), "large.db"))
+	id, _, _, err := s.Create(context.Background(), sheet)
+	if err != nil {
+		t.Fatalf("a sheet of %d parts is refused: %v", mostParts, err)
+	}
+	_, err = s.Commit(context.Background(), id, batch(t, 1, "ann", `{"do": "add", "part": {"ref": "R9999", "kind": "resistor", "at": [2, 2]}}`))
 	var place *schematic.PlaceError
 	if !errors.As(err, &place) || place.Place != "parts" {
 		t.Errorf("part %d gives error %v, want it refused", mostParts+1, err)
 	}
-	sheet, revision, err := s.Sheet(context.Background(), id)
-	if err != nil || revision != 2 {
-		t.Fatalf("the sheet is at revision %d, error %v", revision, err)
+	if commit(t, s, id, batch(t, 2, "ann", remove(0))) != 2 {
+		t.Error("a full sheet takes no edits any more")
 	}
-	larger := *sheet
-	larger.Parts = append(larger.Parts[:mostParts:mostParts], schematic.Part{Ref: "R9999", Kind: sheet.Parts[0].Kind})
-	if _, _, _, err := s.Create(context.Background(), &larger); !errors.As(err, &place) {
-		t.Errorf("creating it gives error %v, want it refused", err)
+	sheet.Parts = append(sheet.Parts, schematic.Part{Ref: "R9999", Kind: resistor})
+	if _, _, _, err := s.Create(context.Background(), sheet); !errors.As(err, &place) || place.Place != "parts" {
+		t.Errorf("creating a sheet of %d parts gives error %v, want it refused", mostParts+1, err)
+	}
+	var many []string
+	for range mostEdits + 1 {
+		many = append(many, `{"do": "turn", "refs": ["R1"]}`)
+	}
+	if _, err := s.Commit(context.Background(), id, batch(t, 3, "ann", many...)); !errors.As(err, &place) || place.Place != "edits" {
+		t.Errorf("a batch of %d edits gives error %v, want it refused", mostEdits+1, err)
 	}
 }
 
@@ -338,6 +350,31 @@ func TestAStateInMemoryThatIsOutOfDateIsNotUsed(t *testing.T) {
 	commit(t, s, id, batch(t, 2, "ann", add(2)))
 	if got := refs(t, s, id); got != "R1 R2" {
 		t.Errorf("the sheet holds %q, want R1 and R2", got)
+	}
+}
+
+func TestTwoStoresMayShareADatabase(t *testing.T) {
+	name := filepath.Join(t.TempDir(), "shared.db")
+	first, second := open(t, name), open(t, name)
+	id, _, _, err := first.Create(context.Background(), schematic.New("Pump"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	var wait sync.WaitGroup
+	for i, s := range []*Store{first, second, first, second} {
+		wait.Go(func() {
+			for n := range 25 {
+				commit(t, s, id, batch(t, 25*i+n, "ann", add(25*i+n)))
+			}
+		})
+	}
+	wait.Wait()
+	if got := refs(t, first, id); got != refs(t, second, id) || len(strings.Fields(got)) != 100 {
+		t.Errorf("the sheet holds %q and %q", got, refs(t, second, id))
+	}
+	commit(t, second, id, batch(t, 101, "ann", undo, undo))
+	if _, revision, _ := first.Sheet(context.Background(), id); revision != 103 {
+		t.Errorf("the sheet is at revision %d, want 103", revision)
 	}
 }
 

@@ -21,6 +21,9 @@ const (
 // reach is how many of an author's log entries undo and redo look back on, at least.
 const reach = 1000
 
+// mostEdits is how many edits a batch may have; applying one takes time that grows with the sheet.
+const mostEdits = 1_000
+
 // plan is what a batch makes of a sheet.
 type plan struct {
 	base     int // the revision that it was planned for
@@ -74,6 +77,10 @@ func reverts(edit schematic.Edit) bool { return edit.Do == undone || edit.Do == 
 
 // take adds a batch to the plan. An error leaves the plan of no use.
 func (p *plan) take(batch Batch) error {
+	if len(batch.Edits) > mostEdits {
+		return &schematic.PlaceError{Place: "edits", Message: fmt.Sprintf(
+			"a batch has at most %d edits, this one has %d; divide it into several", mostEdits, len(batch.Edits))}
+	}
 	if batch.Base > p.revision {
 		return &schematic.ConflictError{Message: fmt.Sprintf(
 			"the edit was made on revision %d, but the sheet is at revision %d; load it again", batch.Base, p.revision)}
