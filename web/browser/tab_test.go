@@ -34,6 +34,10 @@ func open(t *testing.T, path string, width, height int64, options ...chromedp.Em
 			t.Error(line)
 		}
 	})
+	// The tab lives as long as the context in which it is first used, so that one must not be a patient one.
+	if err := chromedp.Do(ctx); err != nil {
+		t.Fatal(err)
+	}
 	page.do(chromedp.EmulateViewport(width, height, options...))
 	if err := chromedp.Listen(ctx, page.hear); err != nil {
 		t.Fatal(err)
@@ -219,7 +223,9 @@ func (p *tab) keepPicture() {
 	if folder == "" {
 		return
 	}
-	picture, err := chromedp.Run(p.ctx, chromedp.CaptureScreenshot())
+	ctx, cancel := context.WithTimeout(p.ctx, patience)
+	defer cancel()
+	picture, err := chromedp.Run(ctx, chromedp.CaptureScreenshot())
 	if err != nil {
 		p.Log("no picture:", err)
 		return
