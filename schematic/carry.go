@@ -38,7 +38,7 @@ func newCarry(d *draft, parts map[int]Part, wires []int, by Point) *carry {
 	c.notePins()
 	c.followWhole()
 	for w := range c.wires {
-		for _, p := range c.before.along[w] {
+		for _, p := range c.before.placesOf(w) {
 			if _, known := c.to[p]; !known {
 				c.to[p] = p.moved(by)
 			}
@@ -57,7 +57,8 @@ func (c *carry) useAt(p Point) *use {
 }
 
 func (c *carry) noteUses() {
-	for w, places := range c.before.along {
+	for w := range c.before.along {
+		places := c.before.placesOf(w)
 		for _, p := range places {
 			u := c.useAt(p)
 			u.wires[w] = true
@@ -105,7 +106,8 @@ func (c *carry) anchored(p Point) bool {
 
 // followWhole lets wires move as a whole that run between moved things and to which nothing else is attached.
 func (c *carry) followWhole() {
-	for w, places := range c.before.along {
+	for w := range c.before.along {
+		places := c.before.placesOf(w)
 		first, last := places[0], places[len(places)-1]
 		to, ok := c.to[first]
 		if !ok || c.wires[w] || c.anchored(first) || c.anchored(last) || c.to[last] != last.moved(offset(first, to)) || offset(first, to) != c.by {
@@ -210,7 +212,7 @@ func (c *carry) layScene(follow []int) {
 func (c *carry) reshaped(w int) []Point {
 	points := c.d.Wires[w].Points
 	first, last := points[0], points[len(points)-1]
-	along := slices.Clone(c.before.along[w])
+	along := slices.Clone(c.before.placesOf(w))
 	if c.follows(first) {
 		points = c.leadEnd(w, points, along, c.to[first])
 	}
@@ -322,6 +324,15 @@ func (c *carry) targets(p Point) []Point {
 		if c.wires[w] {
 			add(p.moved(c.by))
 		}
+	}
+	return list
+}
+
+// placesOf lists the places on a wire in the direction of drawing.
+func (j *Joins) placesOf(w int) []Point {
+	list := make([]Point, len(j.along[w]))
+	for i, place := range j.along[w] {
+		list[i] = j.Places[place]
 	}
 	return list
 }

@@ -25,151 +25,173 @@ type Joins struct {
 	Pins      [][]int       // the group of each pin of each part
 	Groups    int           // how many groups of joined things there are
 	Dots      []Point       // places where three or more ways meet, in reading order
-	Crossings []Point       // where pieces cross without joining
+	Crossings []Point       // where pieces cross without joining, in reading order
 
-	along [][]Point // the places on each wire, in the direction of drawing
+	along   [][]int // the places on each wire, as indices, in the direction of drawing
+	columns []int   // the places by x, then by y, as indices
+	column  []int   // where each place stands in columns
+	right   []bool  // whether a piece leads from each place to the next one on its row
+	down    []bool  // whether a piece leads from each place to the next one on its column
 }
 
-// Join finds what is joined on a sheet. Its cost is O(n log n) in the number of pins and wire corners, and one step for
-// each row that an upright piece passes.
+// Join finds what is joined on a sheet that passes Validate. Its cost is O(n log n) in the number of pins, wire corners
+// and pieces, and one search for each row of wires that an upright piece passes.
 func Join(sheet *Sheet) *Joins {
-	joins := &Joins{Node: map[Point]int{}}
-	joins.collectPlaces(sheet)
-	joins.cutWires(sheet)
-	joins.group(sheet)
-	joins.findDots(sheet)
-	joins.findCrossings()
-	return joins
+	j := &Joins{}
+	j.collectPlaces(sheet)
+	j.cutWires(sheet)
+	j.group(sheet)
+	j.findDots(sheet)
+	j.findCrossings()
+	return j
 }
 
 // comparePoints orders places as one reads: from the top, and from the left.
 func comparePoints(a, b Point) int { return cmp.Or(cmp.Compare(a.Y, b.Y), cmp.Compare(a.X, b.X)) }
 
+// middle moves the coordinates of places, which may be negative, into the range of a half key.
+const middle = 1 << 31
+
 func (j *Joins) collectPlaces(sheet *Sheet) {
-	add := func(p Point) {
-		if _, known := j.Node[p]; !known {
-			j.Node[p] = 0
-			j.Places = append(j.Places, p)
-		}
-	}
+	// Keys sort faster than points; y stands in their upper half.
+	keys := make([]uint64, 0, 2*len(sheet.Parts)+3*len(sheet.Wires))
+	add := func(p Point) { keys = append(keys, uint64(p.Y+middle)<<32|uint64(p.X+middle)) }
 	for i := range sheet.Parts {
-		for _, pin := range sheet.Parts[i].Kind.Pins {
-			add(sheet.Parts[i].Pin(pin))
+		for k := range sheet.Parts[i].Kind.Pins {
+			add(sheet.Parts[i].pin(k))
 		}
 	}
-	for _, wire := range sheet.Wires {
-		for _, p := range wire.Points {
-			add(p)
+	for i := range sheet.Wires {
+		points := sheet.Wires[i].Points
+		for k, p := range points {
+			if bends(points, k) {
+				add(p)
+			}
 		}
 	}
 	for _, p := range sheet.Joints {
 		add(p)
 	}
-	slices.SortFunc(j.Places, comparePoints)
-	for i, p := range j.Places {
+	slices.Sort(keys)
+	keys = slices.Compact(keys)
+
+	j.Places = make([]Point, len(keys))
+	j.Node = make(map[Point]int, len(keys))
+	for i, key := range keys {
+		p := Point{int(key&(1<<32-1)) - middle, int(key>>32) - middle}
+		j.Places[i] = p
 		j.Node[p] = i
+		keys[i] = uint64(p.X+middle)<<32 | uint64(i) // the index rises with y within a column
+	}
+	slices.Sort(keys)
+	j.columns, j.column = make([]int, len(keys)), make([]int, len(keys))
+	for k, key := range keys {
+		i := int(key & (1<<32 - 1))
+		j.columns[k], j.column[i] = i, k
 	}
 }
 
-// rows holds places in lines, so that those on a segment are found by bisection.
-type rows struct {
-	level   map[int][]int // y → x ascending
-	upright map[int][]int // x → y ascending
+// bends reports whether a chain of places ends or changes its direction at the place k.
+func bends(points []Point, k int) bool {
+	return k == 0 || k == len(points)-1 || heading(points[k-1], points[k]) != heading(points[k], points[k+1])
 }
 
-func (j *Joins) rows() rows {
-	r := rows{map[int][]int{}, map[int][]int{}}
-	for _, p := range j.Places {
-		r.level[p.Y] = append(r.level[p.Y], p.X)
-		r.upright[p.X] = append(r.upright[p.X], p.Y)
-	}
-	for _, ys := range r.upright {
-		sort.Ints(ys)
-	}
-	return r
-}
-
-// along lists the places on a segment from one end to the other, both included.
-func (r rows) along(from, to Point) []Point {
-	level := from.Y == to.Y
-	line, low, high := r.upright[from.X], min(from.Y, to.Y), max(from.Y, to.Y)
-	if level {
-		line, low, high = r.level[from.Y], min(from.X, to.X), max(from.X, to.X)
-	}
-	first := sort.SearchInts(line, low)
-	last := sort.SearchInts(line, high+1)
-	places := make([]Point, 0, last-first)
-	for _, at := range line[first:last] {
-		if level {
-			places = append(places, Point{at, from.Y})
-		} else {
-			places = append(places, Point{from.X, at})
-		}
-	}
-	if comparePoints(from, to) > 0 {
-		slices.Reverse(places)
-	}
-	return places
+// heading is the direction from one place to another on its row or column, as a step of one.
+func heading(from, to Point) Point {
+	return Point{cmp.Compare(to.X, from.X), cmp.Compare(to.Y, from.Y)}
 }
 
 func (j *Joins) cutWires(sheet *Sheet) {
-	lines := j.rows()
-	drawn := map[[2]int]bool{}
-	j.along = make([][]Point, len(sheet.Wires))
-	for w, wire := range sheet.Wires {
-		j.along[w] = append(j.along[w], wire.Points[0])
-		for i := 1; i < len(wire.Points); i++ {
-			places := lines.along(wire.Points[i-1], wire.Points[i])
-			j.along[w] = append(j.along[w], places[1:]...)
-			for k := 1; k < len(places); k++ {
-				a, b := j.Node[places[k-1]], j.Node[places[k]]
-				if key := [2]int{min(a, b), max(a, b)}; !drawn[key] {
-					drawn[key] = true
-					j.Pieces = append(j.Pieces, Piece{w, places[k-1], places[k]})
-				}
+	j.right, j.down = make([]bool, len(j.Places)), make([]bool, len(j.Places))
+	j.along = make([][]int, len(sheet.Wires))
+	all := make([]int, 0, 2*len(j.Places)) // one backing array for most wires
+	for w := range sheet.Wires {
+		points := sheet.Wires[w].Points
+		first := len(all)
+		all = append(all, j.Node[points[0]])
+		for k := 1; k < len(points); k++ {
+			if bends(points, k) {
+				all = j.follow(all, w, j.Node[points[k]])
 			}
 		}
+		j.along[w] = all[first:len(all):len(all)]
 	}
+}
+
+// follow goes straight from the last place of a list to another, lists the places on the way, and notes the pieces.
+func (j *Joins) follow(all []int, wire, to int) []int {
+	from := all[len(all)-1]
+	line, drawn := j.columns, j.down
+	at, end := j.column[from], j.column[to]
+	level := j.Places[from].Y == j.Places[to].Y
+	if level {
+		at, end, drawn = from, to, j.right
+	}
+	step := cmp.Compare(end, at)
+	for at != end {
+		at += step
+		next := at
+		if !level {
+			next = line[at]
+		}
+		if low := min(from, next); !drawn[low] {
+			drawn[low] = true
+			j.Pieces = append(j.Pieces, Piece{wire, j.Places[from], j.Places[next]})
+		}
+		all = append(all, next)
+		from = next
+	}
+	return all
 }
 
 func (j *Joins) group(sheet *Sheet) {
 	sets := newSets(len(j.Places))
-	for _, piece := range j.Pieces {
-		sets.union(j.Node[piece.From], j.Node[piece.To])
-	}
-	number := map[int]int{}
-	of := func(p Point) int {
-		root := sets.find(j.Node[p])
-		if _, known := number[root]; !known {
-			number[root] = len(number)
+	for _, places := range j.along {
+		for k := 1; k < len(places); k++ {
+			sets.union(places[k-1], places[k])
 		}
-		return number[root]
 	}
-	j.Wires = make([]int, len(sheet.Wires))
+	number := make([]int, len(j.Places)) // one more than the group of each root that was met
+	of := func(place int) int {
+		root := sets.find(place)
+		if number[root] == 0 {
+			j.Groups++
+			number[root] = j.Groups
+		}
+		return number[root] - 1
+	}
 	j.Pins = make([][]int, len(sheet.Parts))
+	all := make([]int, 0, 2*len(sheet.Parts)) // one backing array for most pins
 	for i := range sheet.Parts {
 		part := &sheet.Parts[i]
-		j.Pins[i] = make([]int, len(part.Kind.Pins))
-		for k, pin := range part.Kind.Pins {
-			j.Pins[i][k] = of(part.Pin(pin))
+		first := len(all)
+		for k := range part.Kind.Pins {
+			all = append(all, of(j.Node[part.pin(k)]))
 		}
+		j.Pins[i] = all[first:len(all):len(all)]
 	}
-	for i, wire := range sheet.Wires {
-		j.Wires[i] = of(wire.Points[0])
+	j.Wires = make([]int, len(sheet.Wires))
+	for w, places := range j.along {
+		j.Wires[w] = of(places[0])
 	}
-	j.Groups = len(number)
 }
 
 func (j *Joins) findDots(sheet *Sheet) {
 	ways := make([]int, len(j.Places))
-	for _, piece := range j.Pieces {
-		ways[j.Node[piece.From]]++
-		ways[j.Node[piece.To]]++
+	for i := range j.Places {
+		if j.right[i] {
+			ways[i]++
+			ways[i+1]++
+		}
+		if j.down[i] {
+			ways[i]++
+			ways[j.columns[j.column[i]+1]]++
+		}
 	}
 	for i := range sheet.Parts {
 		part := &sheet.Parts[i]
-		for _, pin := range part.Kind.Pins {
-			ways[j.Node[part.Pin(pin)]]++
+		for k := range part.Kind.Pins {
+			ways[j.Node[part.pin(k)]]++
 		}
 	}
 	for i, p := range j.Places {
@@ -180,32 +202,30 @@ func (j *Joins) findDots(sheet *Sheet) {
 }
 
 func (j *Joins) findCrossings() {
-	level := map[int][]Piece{} // by y, ascending in their left ends
-	for _, piece := range j.Pieces {
-		if piece.From.Y == piece.To.Y {
-			if piece.From.X > piece.To.X {
-				piece.From, piece.To = piece.To, piece.From
-			}
-			level[piece.From.Y] = append(level[piece.From.Y], piece)
+	var rows []int // the first place of each row on which there is a piece
+	for i, p := range j.Places {
+		if j.right[i] && (len(rows) == 0 || j.Places[rows[len(rows)-1]].Y != p.Y) {
+			rows = append(rows, i)
 		}
 	}
-	for _, row := range level {
-		slices.SortFunc(row, func(a, b Piece) int { return cmp.Compare(a.From.X, b.From.X) })
-	}
-	for _, piece := range j.Pieces {
-		x := piece.From.X
-		for y := min(piece.From.Y, piece.To.Y) + 1; x == piece.To.X && y < max(piece.From.Y, piece.To.Y); y++ {
-			row := level[y]
-			next := sort.Search(len(row), func(i int) bool { return row[i].From.X >= x })
-			if next > 0 && row[next-1].To.X > x {
-				j.Crossings = append(j.Crossings, Point{x, y})
+	for i, p := range j.Places {
+		if !j.down[i] {
+			continue
+		}
+		end := j.Places[j.columns[j.column[i]+1]].Y
+		next := sort.Search(len(rows), func(k int) bool { return j.Places[rows[k]].Y > p.Y })
+		for ; next < len(rows) && j.Places[rows[next]].Y < end; next++ {
+			crossing := Point{p.X, j.Places[rows[next]].Y}
+			after, _ := slices.BinarySearchFunc(j.Places, crossing, comparePoints)
+			if after > 0 && j.right[after-1] && j.Places[after-1].Y == crossing.Y {
+				j.Crossings = append(j.Crossings, crossing)
 			}
 		}
 	}
 	slices.SortFunc(j.Crossings, comparePoints)
 }
 
-// sets are disjoint sets of small numbers, joined by rank-free union with path halving.
+// sets are disjoint sets of small numbers, joined without ranks and with path halving.
 type sets []int
 
 func newSets(n int) sets {

@@ -58,8 +58,13 @@ type Case struct {
 func (p *Part) Fill() kinds.Filled { return p.Kind.Fill(p.Values) }
 
 // Pin is where a pin of the part lies on the sheet.
-func (p *Part) Pin(pin kinds.Pin) Point {
-	x, y := pin.X, pin.Y
+func (p *Part) Pin(pin kinds.Pin) Point { return p.place(pin.X, pin.Y) }
+
+// pin is where the pin with an index in Kind.Pins lies on the sheet.
+func (p *Part) pin(k int) Point { return p.place(p.Kind.Pins[k].X, p.Kind.Pins[k].Y) }
+
+// place is where an offset from the part's origin lies on the sheet.
+func (p *Part) place(x, y int) Point {
 	if p.Flip {
 		x = -x
 	}
