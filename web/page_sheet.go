@@ -57,7 +57,7 @@ func (s *Server) today() string { return s.now().UTC().Format("2006-01-02") }
 
 func (s *Server) compose(solved *solvedSheet, shown int) *draw.Picture {
 	return draw.Compose(solved.Sheet, solved.Result, draw.Options{
-		Case: shown, Meshes: true, Interactive: true, Date: s.today(), Revision: strconv.Itoa(solved.Revision),
+		Case: shown, Meshes: true, Interactive: true, Date: s.today(),
 	})
 }
 

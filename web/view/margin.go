@@ -2,7 +2,9 @@ package view
 
 import (
 	"fmt"
+	"maps"
 	"math/cmplx"
+	"slices"
 	"strings"
 
 	"loopwright/schematic"
@@ -38,10 +40,36 @@ func findings(drawing *trace.Drawing, solved *cases.Case) []Finding {
 	if solved.Problem != nil && solved.Problem.Code != "empty" {
 		list = append(list, Finding{solved.Problem.Code, "stop", "▲", solved.Problem.Message, solved.Problem.Parts})
 	}
+	alone := unconnected(drawing)
 	for _, statement := range drawing.Statements {
+		if len(statement.Refs) == 1 && alone[statement.Refs[0]] {
+			continue
+		}
 		list = append(list, Finding{statement.Rule, "note", "○", statement.Says, statement.Refs})
 	}
+	if refs := slices.Sorted(maps.Keys(alone)); len(refs) > 0 {
+		says := fmt.Sprintf("Not wired yet: -%s.", strings.Join(refs, ", -"))
+		list = append(list, Finding{"open-pin", "note", "○", says, refs})
+	}
 	return list
+}
+
+// unconnected finds the parts of which no pin is joined to anything; one line for all of them says more than one for
+// each pin.
+func unconnected(drawing *trace.Drawing) map[string]bool {
+	open := map[string]int{}
+	for _, statement := range drawing.Statements {
+		if statement.Rule == "open-pin" {
+			open[statement.Refs[0]]++
+		}
+	}
+	alone := map[string]bool{}
+	for ref, pins := range open {
+		if part := drawing.Sheet.Part(ref); part != nil && pins == len(part.Kind.Pins) {
+			alone[ref] = true
+		}
+	}
+	return alone
 }
 
 func meshLines(drawing *trace.Drawing, solved *cases.Case) []MeshLine {
