@@ -2,119 +2,144 @@ package trace
 
 import (
 	"cmp"
-	"math"
 	"slices"
 	"sort"
 
 	"loopwright/schematic"
 )
 
-// markCrossed marks the edges that cross another edge, or a place where something joins, without being joined there.
-func markCrossed(edges []edge, places []schematic.Point) {
-	lines := newLines(edges, places)
-	for i := range edges {
-		e := &edges[i]
+// markCrossed marks the lines that cross another one without being joined to it, and branches that run over a place to
+// which they are not joined. Its cost is O(n log n), and O(n) more for each slanted line; slanted are only the short ways
+// between pins of parts that have more than two.
+func (g *plane) markCrossed() {
+	g.sweep(func(p schematic.Point) (across, along int) { return p.X, p.Y })
+	g.sweep(func(p schematic.Point) (across, along int) { return p.Y, p.X })
+	for i := range g.edges {
+		if a, b := g.line(i); a.X != b.X && a.Y != b.Y {
+			g.crossSlanted(i)
+		}
+	}
+}
+
+// line gives the two places of an edge.
+func (g *plane) line(i int) (from, to schematic.Point) {
+	return g.places[g.edges[i].from], g.places[g.edges[i].to]
+}
+
+// An event of a sweep, in the order in which those of one row are taken: lines that end, then questions, then lines that
+// begin. So a line that only touches a row is never there when the row asks.
+const (
+	ends = iota
+	asks
+	begins
+)
+
+type event struct {
+	along, kind int
+	low, high   int // columns: of a line its own twice, of a question the bounds that do not count themselves
+	edge        int // that asks, −1 for a line
+}
+
+// sweep marks the level lines that an upright line crosses, and the branches among them that run over a place. A row
+// moves down the sheet and counts the upright lines that it cuts, by column. What is level and upright depends on how
+// points are read, so that a second sweep does the same for upright lines.
+func (g *plane) sweep(read func(schematic.Point) (across, along int)) {
+	var events []event
+	columns := make([]int, 0, len(g.places))
+	for i := range g.edges {
+		a, b := g.line(i)
+		x1, y1 := read(a)
+		x2, y2 := read(b)
 		switch {
-		case e.from.X == e.to.X:
-			lines.crossUpright(edges, i)
-		case e.from.Y == e.to.Y:
-			if e.branch >= 0 {
-				e.crossed = e.crossed || between(lines.placesLevel[e.from.Y], e.from.X, e.to.X)
-			}
+		case x1 == x2:
+			events = append(events, event{min(y1, y2), begins, x1, x1, -1}, event{max(y1, y2), ends, x1, x1, -1})
+			columns = append(columns, x1)
+		case y1 == y2:
+			events = append(events, event{y1, asks, min(x1, x2), max(x1, x2), i})
+		}
+	}
+	slices.Sort(columns)
+	columns = slices.Compact(columns)
+	slices.SortFunc(events, func(a, b event) int { return cmp.Or(cmp.Compare(a.along, b.along), cmp.Compare(a.kind, b.kind)) })
+	active := newCounter(len(columns))
+	for _, e := range events {
+		low := sort.SearchInts(columns, e.low)
+		switch e.kind {
+		case begins:
+			active.add(low, 1)
+		case ends:
+			active.add(low, -1)
 		default:
-			lines.crossSlanted(edges, i, places)
-		}
-	}
-}
-
-// lines holds level edges and all places by row, and places by column, each in ascending order.
-type lines struct {
-	level         map[int][]int // y → edges, by their left ends
-	placesLevel   map[int][]int // y → x
-	placesUpright map[int][]int // x → y
-}
-
-func newLines(edges []edge, places []schematic.Point) *lines {
-	l := &lines{map[int][]int{}, map[int][]int{}, map[int][]int{}}
-	for i := range edges {
-		if e := &edges[i]; e.from.Y == e.to.Y {
-			l.level[e.from.Y] = append(l.level[e.from.Y], i)
-		}
-	}
-	for _, row := range l.level {
-		slices.SortFunc(row, func(a, b int) int { return cmp.Compare(left(&edges[a]), left(&edges[b])) })
-	}
-	for _, p := range places {
-		l.placesLevel[p.Y] = append(l.placesLevel[p.Y], p.X)
-		l.placesUpright[p.X] = append(l.placesUpright[p.X], p.Y)
-	}
-	for _, row := range l.placesLevel {
-		sort.Ints(row)
-	}
-	for _, column := range l.placesUpright {
-		sort.Ints(column)
-	}
-	return l
-}
-
-func left(e *edge) int  { return min(e.from.X, e.to.X) }
-func right(e *edge) int { return max(e.from.X, e.to.X) }
-
-// between reports whether any number of an ascending list lies strictly between two bounds.
-func between(ascending []int, a, b int) bool {
-	low, high := min(a, b), max(a, b)
-	i := sort.SearchInts(ascending, low+1)
-	return i < len(ascending) && ascending[i] < high
-}
-
-// crossUpright marks an upright edge together with the level edges that pass between its ends.
-func (l *lines) crossUpright(edges []edge, i int) {
-	e := &edges[i]
-	if e.branch >= 0 && between(l.placesUpright[e.from.X], e.from.Y, e.to.Y) {
-		e.crossed = true
-	}
-	for y := min(e.from.Y, e.to.Y) + 1; y < max(e.from.Y, e.to.Y); y++ {
-		row := l.level[y]
-		next := sort.Search(len(row), func(k int) bool { return left(&edges[row[k]]) >= e.from.X })
-		for k := next - 1; k >= 0 && k >= next-overlapping; k-- {
-			if right(&edges[row[k]]) > e.from.X {
-				e.crossed, edges[row[k]].crossed = true, true
+			if low < len(columns) && columns[low] == e.low {
+				low++
+			}
+			if active.sum(sort.SearchInts(columns, e.high)) > active.sum(low) {
+				g.edges[e.edge].crossed = true
 			}
 		}
 	}
+	g.markCovered(read)
 }
 
-// overlapping is how many level edges of one row are looked at: wires never overlap there, and parts rarely do.
-const overlapping = 8
-
-// crossSlanted marks a slanted edge, and whatever its box touches: a slanted line on a grid is only ever the short way
-// between two pins of one part.
-func (l *lines) crossSlanted(edges []edge, i int, places []schematic.Point) {
-	e := &edges[i]
-	for k := range edges {
-		if k != i && segmentsCross(e, &edges[k]) {
-			e.crossed, edges[k].crossed = true, true
+// markCovered marks the level branches that run over a place. Pieces of wire never do, since they end at every place.
+func (g *plane) markCovered(read func(schematic.Point) (across, along int)) {
+	type place struct{ along, across int }
+	sorted := make([]place, len(g.places))
+	for i, p := range g.places {
+		sorted[i].across, sorted[i].along = read(p)
+	}
+	compare := func(a, b place) int { return cmp.Or(cmp.Compare(a.along, b.along), cmp.Compare(a.across, b.across)) }
+	slices.SortFunc(sorted, compare)
+	for i := range g.edges {
+		a, b := g.line(i)
+		x1, y1 := read(a)
+		x2, y2 := read(b)
+		if g.edges[i].branch < 0 || y1 != y2 {
+			continue
+		}
+		next, _ := slices.BinarySearchFunc(sorted, place{y1, min(x1, x2) + 1}, compare)
+		if next < len(sorted) && compare(sorted[next], place{y1, max(x1, x2)}) < 0 {
+			g.edges[i].crossed = true
 		}
 	}
-	for _, p := range places {
-		if p != e.from && p != e.to && distanceToSegment(p, e) == 0 {
-			e.crossed = true
+}
+
+// crossSlanted marks a slanted line together with all that it crosses.
+func (g *plane) crossSlanted(i int) {
+	a, b := g.line(i)
+	for k := range g.edges {
+		c, d := g.line(k)
+		if side(a, b, c)*side(a, b, d) < 0 && side(c, d, a)*side(c, d, b) < 0 {
+			g.edges[i].crossed, g.edges[k].crossed = true, true
 		}
 	}
-}
-
-// segmentsCross reports whether two edges meet at a point that is inside both.
-func segmentsCross(a, b *edge) bool {
-	side := func(p, q, r schematic.Point) int {
-		return cmp.Compare((q.X-p.X)*(r.Y-p.Y)-(q.Y-p.Y)*(r.X-p.X), 0)
+	for _, p := range g.places {
+		within := min(a.X, b.X) < p.X && p.X < max(a.X, b.X)
+		g.edges[i].crossed = g.edges[i].crossed || (within && side(a, b, p) == 0)
 	}
-	return side(a.from, a.to, b.from)*side(a.from, a.to, b.to) < 0 && side(b.from, b.to, a.from)*side(b.from, b.to, a.to) < 0
 }
 
-// distanceToSegment is how far a place lies from an edge, in grid steps.
-func distanceToSegment(p schematic.Point, e *edge) float64 {
-	dx, dy := float64(e.to.X-e.from.X), float64(e.to.Y-e.from.Y)
-	px, py := float64(p.X-e.from.X), float64(p.Y-e.from.Y)
-	t := math.Max(0, math.Min(1, (px*dx+py*dy)/(dx*dx+dy*dy)))
-	return math.Hypot(px-t*dx, py-t*dy)
+// side tells on which side of the line from a to b a point lies: 1, −1, or 0 on it.
+func side(a, b, p schematic.Point) int {
+	return cmp.Compare((b.X-a.X)*(p.Y-a.Y), (b.Y-a.Y)*(p.X-a.X))
+}
+
+// counter counts things at numbered places and sums the counts below a place, each in O(log n) (Fenwick, "A new data
+// structure for cumulative frequency tables", Software: Practice and Experience 24, 1994).
+type counter []int
+
+func newCounter(n int) counter { return make(counter, n+1) }
+
+func (c counter) add(place, count int) {
+	for i := place + 1; i < len(c); i += i & -i {
+		c[i] += count
+	}
+}
+
+func (c counter) sum(below int) int {
+	total := 0
+	for i := below; i > 0; i -= i & -i {
+		total += c[i]
+	}
+	return total
 }

@@ -2,146 +2,164 @@ package trace
 
 import (
 	"cmp"
-	"math"
 	"slices"
 
-	"loopwright/schematic"
 	"loopwright/schematic/stroke"
 )
 
-// edge is one line of the drawing between two places: a piece of wire, or a branch from pin to pin.
-type edge struct {
-	from, to schematic.Point
-	branch   int // −1 for a piece of wire
-	// crossed marks an edge that crosses another without joining it, or runs over it: faces along it are not free.
-	crossed bool
-}
-
-// face is a walk around one face of the drawing.
+// face is a walk around one face of one block of the drawing.
 type face struct {
-	outline []schematic.Point
-	steps   []Step
+	halves  []int
+	number  int // among all faces
+	corner  int // the first place in reading order
+	area    int // twice the area, in square grid steps; positive when the walk is clockwise
+	steps   int // how many branches it runs through
 	crossed bool
-	area    float64 // twice the area, in square grid steps; positive when the walk is clockwise
+	kept    bool // it is a mesh
 }
 
-// edges lists all lines of the drawing.
-func (d *Drawing) edges() []edge {
-	list := make([]edge, 0, len(d.Joins.Pieces)+len(d.Branches))
-	for _, piece := range d.Joins.Pieces {
-		list = append(list, edge{from: piece.From, to: piece.To, branch: -1})
-	}
-	for b, branch := range d.Branches {
-		part := &d.Sheet.Parts[branch.Part]
-		from, _ := part.Kind.Pin(branch.Pins[0])
-		to, _ := part.Kind.Pin(branch.Pins[1])
-		list = append(list, edge{from: part.Pin(from), to: part.Pin(to), branch: b})
-	}
-	return list
+// faces are the faces of the drawing, and how they lie side by side.
+type faces struct {
+	*plane
+	list   []face
+	beside []int // the number of the face to the right of each half edge, −1 for none
 }
 
-// findFaces walks around every face of the drawing. At each place the edges are taken in the order of their angles; a
-// walk turns as sharply to the right as it can, so that it goes clockwise around the inside of a face and
-// counterclockwise around the outside of a component.
-func findFaces(edges []edge) []face {
-	rotation := newRotation(edges)
-	seen := make([]bool, 2*len(edges))
-	var faces []face
-	for start := range seen {
-		if seen[start] {
+// findFaces walks around every face of every block. At each place a walk turns as sharply to the right as it can within
+// its block, so that it goes clockwise around the inside of a face and counterclockwise around the outside of a block.
+func (g *plane) findFaces() *faces {
+	f := &faces{plane: g, beside: make([]int, len(g.leaving))}
+	following := g.following()
+	for half := range f.beside {
+		f.beside[half] = -1
+	}
+	arena := make([]int, 0, len(g.leaving))
+	for start := range f.beside {
+		if f.beside[start] >= 0 || g.edges[start/2].block < 0 {
 			continue
 		}
-		var f face
-		for half := start; !seen[half]; half = rotation.next(half) {
-			seen[half] = true
-			f.add(edges, half)
+		first := len(arena)
+		walk := face{number: len(f.list), corner: len(g.places)}
+		for half := start; f.beside[half] < 0; half = following[half] {
+			f.beside[half] = walk.number
+			arena = append(arena, half)
+			walk.add(g, half)
 		}
-		faces = append(faces, f)
+		walk.halves = arena[first:]
+		f.list = append(f.list, walk)
 	}
-	return faces
+	return f
 }
 
-// A half edge is an edge with a direction: 2i runs edge i from its first place to its second, 2i+1 back.
-func ends(edges []edge, half int) (from, to schematic.Point) {
-	e := &edges[half/2]
-	if half%2 == 0 {
-		return e.from, e.to
+// following gives the half edge that comes after each one around its face.
+func (g *plane) following() []int {
+	following := make([]int, len(g.leaving))
+	for p := range g.places {
+		around := g.leaving[g.start[p]:g.start[p+1]]
+		for i, half := range around {
+			before := i
+			for {
+				before = (before + len(around) - 1) % len(around)
+				if g.edges[around[before]/2].block == g.edges[half/2].block {
+					break
+				}
+			}
+			following[half^1] = around[before]
+		}
 	}
-	return e.to, e.from
+	return following
 }
 
-func (f *face) add(edges []edge, half int) {
-	from, to := ends(edges, half)
-	f.outline = append(f.outline, from)
-	f.area += float64(from.X)*float64(to.Y) - float64(to.X)*float64(from.Y)
-	e := &edges[half/2]
+func (f *face) add(g *plane, half int) {
+	from, to := g.ends(half)
+	a, b := g.places[from], g.places[to]
+	f.corner = min(f.corner, from)
+	f.area += a.X*b.Y - b.X*a.Y
+	e := &g.edges[half/2]
 	f.crossed = f.crossed || e.crossed
 	if e.branch >= 0 {
-		f.steps = append(f.steps, Step{e.branch, 1 - 2*(half%2)})
+		f.steps++
 	}
 }
 
-// rotation holds, for each half edge, the one that follows it around a face.
-type rotation struct{ following []int }
-
-func (r *rotation) next(half int) int { return r.following[half] }
-
-func newRotation(edges []edge) *rotation {
-	around := map[schematic.Point][]int{} // the half edges that leave each place
-	for i := range edges {
-		around[edges[i].from] = append(around[edges[i].from], 2*i)
-		around[edges[i].to] = append(around[edges[i].to], 2*i+1)
-	}
-	r := &rotation{make([]int, 2*len(edges))}
-	for _, leaving := range around {
-		angle := make(map[int]float64, len(leaving))
-		for _, half := range leaving {
-			from, to := ends(edges, half)
-			angle[half] = math.Atan2(float64(to.Y-from.Y), float64(to.X-from.X))
-		}
-		slices.SortFunc(leaving, func(a, b int) int { return cmp.Or(cmp.Compare(angle[a], angle[b]), cmp.Compare(a, b)) })
-		for i, half := range leaving {
-			before := leaving[(i+len(leaving)-1)%len(leaving)]
-			r.following[half^1] = before
-			if len(leaving) > 1 && angle[half] == angle[before] {
-				edges[half/2].crossed, edges[before/2].crossed = true, true
-			}
+// keep chooses the faces that are meshes and gives them in reading order: those that are bounded, free of unjoined
+// crossings, and have a branch.
+//
+// Such faces depend on one another only where a ring of wire surrounds some of them: then every branch on one of a group
+// of faces lies on another one of that group as well, so that they add up to nothing. The one with the most branches is
+// left out, the last of them as one reads.
+func (f *faces) keep() []*face {
+	groups := newSets(len(f.list))
+	for i := range f.edges {
+		if e := &f.edges[i]; e.branch >= 0 && e.block >= 0 {
+			groups.union(f.beside[2*i], f.beside[2*i+1])
 		}
 	}
-	return r
-}
-
-// cancel takes out of a walk the branches that it runs in both directions: those do not belong to the mesh.
-func cancel(steps []Step) []Step {
-	sum := make(map[int]int, len(steps))
-	for _, step := range steps {
-		sum[step.Branch] += step.Sense
-	}
-	kept := make([]Step, 0, len(steps))
-	for _, step := range steps {
-		if sum[step.Branch] == step.Sense {
-			kept = append(kept, step)
-			sum[step.Branch] = 0
+	free := make([]bool, len(f.list)) // groups that hold a face that is no mesh
+	var kept []*face
+	for i := range f.list {
+		walk := &f.list[i]
+		walk.kept = walk.area > 0 && !walk.crossed && walk.steps > 0
+		if walk.kept {
+			kept = append(kept, walk)
+		} else {
+			free[groups.find(i)] = true
 		}
 	}
-	return kept
-}
-
-// corner is the first corner of a face as one reads: the topmost, and of those the leftmost.
-func (f *face) corner() schematic.Point {
-	return slices.MinFunc(f.outline, compareByReading)
-}
-
-func compareByReading(a, b schematic.Point) int {
-	return cmp.Or(cmp.Compare(a.Y, b.Y), cmp.Compare(a.X, b.X))
-}
-
-// drawnMesh makes a mesh of a face.
-func (f *face) drawnMesh() Mesh {
-	m := Mesh{Drawn: true, Path: cancel(f.steps), Outline: make([]stroke.Point, len(f.outline))}
-	for i, p := range f.outline {
-		m.Outline[i] = stroke.Point{X: float64(p.X), Y: float64(p.Y)}
+	slices.SortFunc(kept, func(a, b *face) int {
+		return cmp.Or(cmp.Compare(a.corner, b.corner), cmp.Compare(a.area, b.area), cmp.Compare(a.number, b.number))
+	})
+	most := map[int]*face{}
+	for _, walk := range kept {
+		group := groups.find(walk.number)
+		if !free[group] && (most[group] == nil || most[group].steps <= walk.steps) {
+			most[group] = walk
+		}
 	}
-	m.Center, m.Radius = widest(m.Outline)
+	for _, walk := range most {
+		walk.kept = false
+	}
+	return slices.DeleteFunc(kept, func(walk *face) bool { return !walk.kept })
+}
+
+// mesh makes a mesh of a face.
+func (d *Drawing) mesh(f *faces, walk *face) Mesh {
+	first := slices.IndexFunc(walk.halves, func(half int) bool {
+		from, _ := f.ends(half)
+		return from == walk.corner
+	})
+	m := Mesh{Drawn: true, Path: make([]Step, 0, walk.steps)}
+	last := walk.halves[(first+len(walk.halves)-1)%len(walk.halves)]
+	for i := range walk.halves {
+		half := walk.halves[(first+i)%len(walk.halves)]
+		if f.bends(last, half) {
+			from, _ := f.ends(half)
+			m.Outline = append(m.Outline, stroke.Point{X: float64(f.places[from].X), Y: float64(f.places[from].Y)})
+		}
+		last = half
+		if b := f.edges[half/2].branch; b >= 0 {
+			m.Path = append(m.Path, Step{b, 1 - 2*(half%2)})
+		}
+	}
+	m.Path = d.sourceFirst(m.Path)
 	return m
 }
+
+// bends reports whether a walk bends between two half edges.
+func (g *plane) bends(a, b int) bool {
+	ax, ay := g.direction(a)
+	bx, by := g.direction(b)
+	return ax*by != ay*bx
+}
+
+// sourceFirst lets a mesh begin with its first source.
+func (d *Drawing) sourceFirst(path []Step) []Step {
+	first := slices.IndexFunc(path, func(step Step) bool { return d.delivers(step.Branch) })
+	if first <= 0 {
+		return path
+	}
+	return slices.Concat(path[first:], path[:first])
+}
+
+// delivers reports whether a branch is that of a source.
+func (d *Drawing) delivers(b int) bool { return d.Sheet.Parts[d.Branches[b].Part].Kind.Delivers }
