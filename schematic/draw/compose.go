@@ -21,16 +21,18 @@ func Compose(sheet *schematic.Sheet, result *cases.Result, options Options) *Pic
 		Title: sheet.Title, Size: sheet.Size, Width: paper.width, Height: paper.height,
 		OriginX: originX, OriginY: originY, Interactive: options.Interactive,
 	}
-	var reserved []int
+	drawing := result.Drawing
+	var rooms []room
 	if options.Meshes {
-		reserved = reserveMeshes(result.Drawing, l.obstacles)
+		rooms = roomsFor(drawing, l.obstacles)
 	}
 	l.letter()
-	marks := numberGroups(nil, result.Drawing, l.obstacles)
-	for _, number := range reserved {
-		l.obstacles.remove(number)
+	marks := numberGroups(nil, drawing, l.obstacles)
+	for _, room := range rooms {
+		if room.box >= 0 {
+			l.obstacles.remove(room.box)
+		}
 	}
-	drawing := result.Drawing
 	groups := make([]Group, 0, 8+len(l.symbols)+len(sheet.Wires)+len(drawing.Joins.Dots)+len(drawing.Meshes)+len(marks)+len(drawing.Statements))
 	if options.Interactive {
 		space := paper.space()
@@ -38,15 +40,15 @@ func Compose(sheet *schematic.Sheet, result *cases.Result, options Options) *Pic
 	}
 	groups = append(groups, paper.frameGroup(), paper.titleGroup(sheet, solved, &options))
 	if options.Meshes {
-		groups = meshGroups(groups, result.Drawing, solved, l.scale, l.obstacles)
+		groups = meshGroups(groups, drawing, rooms, solved, l.scale, l.obstacles)
 	}
-	groups = wireGroups(groups, result.Drawing, options.Interactive)
-	groups = joinGroups(groups, result.Drawing.Joins.Dots)
+	groups = wireGroups(groups, drawing, options.Interactive)
+	groups = joinGroups(groups, drawing.Joins.Dots)
 	for i := range l.symbols {
 		groups = append(groups, l.partGroup(i, options.Interactive))
 	}
 	groups = append(groups, marks...)
-	groups = looseGroups(groups, result.Drawing.Statements)
+	groups = looseGroups(groups, drawing.Statements)
 	for i := range l.symbols {
 		if l.named[l.symbols[i].part.Ref] {
 			groups = append(groups, l.symbols[i].problemGroup())
@@ -90,6 +92,9 @@ func newLayout(sheet *schematic.Sheet, drawing *trace.Drawing, solved *cases.Cas
 		}
 		l.symbols[i] = placed(part, sheet.Symbols, position)
 		l.branches[i] = -1
+		if l.named[part.Ref] {
+			l.symbols[i].body = l.symbols[i].troubled() // so that the lettering stands clear of the mark
+		}
 	}
 	for i := range drawing.Branches {
 		if branch := &drawing.Branches[i]; l.branches[branch.Part] < 0 {
@@ -116,7 +121,7 @@ func (l *layout) read() {
 
 // block puts all that is drawn in the way of lettering.
 func (l *layout) block(paper paper) {
-	l.obstacles = newObstacles(paper.sheetBox(), 8*len(l.symbols)+4*len(l.drawing.Sheet.Wires)+64)
+	l.obstacles = newObstacles(paper.sheetBox(), 8*len(l.symbols)+2*len(l.drawing.Sheet.Wires)+16)
 	o := l.obstacles
 	for i := range l.symbols {
 		l.symbols[i].block(o)

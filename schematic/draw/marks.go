@@ -18,9 +18,7 @@ func (s *symbol) problemGroup() Group {
 	x, y := box.Right, box.Top
 	sign := stroke.Outline(x, y-0.5, x+0.5, y+0.36, x-0.5, y+0.36)
 	sign.Filled = true
-	stem := stroke.Line(x, y-0.1, x, y+0.1)
-	stem.Ink, stem.Weight = stroke.Paper, stroke.Medium
-	return Group{ID: "problem-" + s.part.Ref, Layer: MarkLayer, List: stroke.List{surround, sign, stem}}
+	return Group{ID: "problem-" + s.part.Ref, Layer: MarkLayer, List: stroke.List{surround, sign}}
 }
 
 // blockProblem puts that mark in the way of lettering.

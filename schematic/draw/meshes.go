@@ -19,23 +19,34 @@ const (
 	arrowClear    = 0.25 // between an arrow and what is around it
 )
 
-// reserveMeshes keeps room for a small arrow in those meshes that lettering could fill.
-func reserveMeshes(drawing *trace.Drawing, o *obstacles) []int {
-	var reserved []int
+// room is where the arrow of a mesh may lie, and how large it may be there. While lettering is placed, a box keeps
+// some of it free in a narrow mesh.
+type room struct {
+	center stroke.Point
+	radius float64
+	box    int // number of that box; −1 for none
+}
+
+// roomsFor finds the room in each mesh before anything is lettered, and reserves it where lettering could fill it.
+func roomsFor(drawing *trace.Drawing, o *obstacles) []room {
+	rooms := make([]room, len(drawing.Meshes))
 	for i := range drawing.Meshes {
+		rooms[i] = room{center: drawing.Meshes[i].Center, box: -1}
 		if mesh := &drawing.Meshes[i]; mesh.Drawn {
-			center, radius := roomIn(mesh, o, narrowMesh)
-			if radius < narrowMesh {
-				reserved = append(reserved, o.add(around(center, reservedArrow+arrowClear)))
-			}
+			rooms[i].center, rooms[i].radius = roomIn(mesh, mesh.Center, o, narrowMesh)
 		}
 	}
-	return reserved
+	for i := range rooms {
+		if drawing.Meshes[i].Drawn && rooms[i].radius < narrowMesh {
+			rooms[i].box = o.add(around(rooms[i].center, reservedArrow+arrowClear))
+		}
+	}
+	return rooms
 }
 
 // meshGroups draws the arrow of every mesh that is a face of the drawing, where its mesh leaves most room. Where there is
 // room for nothing, its group stays empty; the margin lists all mesh currents.
-func meshGroups(groups []Group, drawing *trace.Drawing, solved *cases.Case, s scale, o *obstacles) []Group {
+func meshGroups(groups []Group, drawing *trace.Drawing, rooms []room, solved *cases.Case, s scale, o *obstacles) []Group {
 	for i := range drawing.Meshes {
 		mesh := &drawing.Meshes[i]
 		if !mesh.Drawn {
@@ -48,7 +59,7 @@ func meshGroups(groups []Group, drawing *trace.Drawing, solved *cases.Case, s sc
 			value = written(current, quantity.Ampere, s.ac)
 			group.Attributes = append(group.Attributes, Attribute{"data-current", siNumber(solved.Meshes[i], s.ac)})
 		}
-		if center, radius := roomIn(mesh, o, largestArrow); radius >= smallestArrow {
+		if center, radius := roomIn(mesh, rooms[i].center, o, largestArrow); radius >= smallestArrow {
 			group.List = meshArrow(center, radius, mesh.Name, value)
 		} else if radius >= smallestName {
 			group.List = appendMeshName(nil, center, mesh.Name, 1.6*radius)
@@ -59,32 +70,35 @@ func meshGroups(groups []Group, drawing *trace.Drawing, solved *cases.Case, s sc
 }
 
 // roomIn finds a centre for the arrow of a mesh, and how large it may be there, up to a limit: its own centre if there
-// is room, else the roomiest place near it, where each step away costs a little. It looks at a grid of places first and
-// then around the best of them.
-func roomIn(mesh *trace.Mesh, o *obstacles, limit float64) (center stroke.Point, radius float64) {
+// is room, else the roomiest place near it, where each step away costs a little. It looks first at a place that is known
+// to be good, then at a grid of places, and then around the best of them.
+func roomIn(mesh *trace.Mesh, good stroke.Point, o *obstacles, limit float64) (center stroke.Point, radius float64) {
 	center, radius = mesh.Center, o.clearance(mesh.Center, limit+arrowClear, 0)-arrowClear
 	if radius >= limit {
 		return center, limit
 	}
 	best := radius
-	look := func(around stroke.Point, reach int, step float64) {
+	look := func(p stroke.Point) {
+		cost := 0.06 * math.Hypot(p.X-mesh.Center.X, p.Y-mesh.Center.Y)
+		if limit-cost <= best {
+			return
+		}
+		free := o.clearance(p, limit+arrowClear, best+cost+arrowClear) - arrowClear
+		if free-cost > best+1e-9 && inside(p, mesh.Outline) {
+			best, center, radius = free-cost, p, free
+		}
+	}
+	lookAround := func(middle stroke.Point, reach int, step float64) {
 		for row := -reach; row <= reach; row++ {
 			for column := -reach; column <= reach; column++ {
-				p := stroke.Point{X: around.X + float64(column)*step, Y: around.Y + float64(row)*step}
-				cost := 0.06 * math.Hypot(p.X-mesh.Center.X, p.Y-mesh.Center.Y)
-				if limit-cost <= best || !inside(p, mesh.Outline) {
-					continue
-				}
-				room := o.clearance(p, limit+arrowClear, best+cost+arrowClear) - arrowClear
-				if room-cost > best+1e-9 {
-					best, center, radius = room-cost, p, room
-				}
+				look(stroke.Point{X: middle.X + float64(column)*step, Y: middle.Y + float64(row)*step})
 			}
 		}
 	}
-	look(mesh.Center, 3, 1.5)
-	look(center, 1, 0.7)
-	look(center, 1, 0.35)
+	look(good)
+	lookAround(mesh.Center, 3, 1.5)
+	lookAround(center, 1, 0.7)
+	lookAround(center, 1, 0.35)
 	return center, radius
 }
 
@@ -107,7 +121,7 @@ func meshArrow(center stroke.Point, radius float64, name, value string) stroke.L
 	style := stroke.Style{Ink: stroke.Blue, Dashed: true, Weight: stroke.Fine}
 	list := stroke.List{stroke.Arc{Center: center, Radius: radius, Start: start, Sweep: sweep, Style: style}}
 	list = append(list, arcHead(center, radius, start+sweep))
-	height := valueHeight(value, radius-0.12)
+	height := valueHeight(value, radius-0.25)
 	withValue := height > 0
 	y := center.Y
 	if withValue {

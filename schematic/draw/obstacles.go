@@ -27,7 +27,7 @@ func newObstacles(area stroke.Box, expected int) *obstacles {
 	rows := int((area.Bottom-area.Top)/cellSide) + 1
 	o := &obstacles{
 		area: area, columns: columns, heads: make([]int32, columns*rows),
-		links: make([]link, 0, 2*expected), boxes: make([]stroke.Box, 0, expected),
+		links: make([]link, 0, 3*expected/2), boxes: make([]stroke.Box, 0, expected),
 	}
 	for i := range o.heads {
 		o.heads[i] = -1

@@ -278,7 +278,7 @@ func (s *symbol) led(b *block, o *obstacles, taken *stroke.Box) placement {
 // leader is the line from the box of a block to its symbol.
 func (s *symbol) leader(box stroke.Box) []stroke.Point {
 	end := nearest(s.body, stroke.Point{X: (box.Left + box.Right) / 2, Y: (box.Top + box.Bottom) / 2})
-	return []stroke.Point{nearest(box.Grown(-0.1), end), end}
+	return []stroke.Point{nearest(box.Grown(0.05), end), end}
 }
 
 // clearLine reports whether a leader crosses nothing on its way, its end at the symbol aside.

@@ -53,52 +53,45 @@ func pinOf(sheet *schematic.Sheet, random *rand.Rand) schematic.Point {
 	return part.Pin(part.Kind.Pins[random.IntN(len(part.Kind.Pins))])
 }
 
-func TestLaddersAreDrawn(t *testing.T) {
-	sheet := ladders(366)
-	keep(t, "ladders", Compose(sheet, sampled(sheet, 0, 3), Options{Meshes: true, Interactive: true}).AppendSVG(nil))
-}
-
-func TestScatteredSheetsAreDrawnWithoutLetteringOnAnything(t *testing.T) {
-	for seed := range uint64(20) {
-		sheet := scattered(seed, 40, "A3")
-		picture := Compose(sheet, sampled(sheet, 0, seed), Options{Meshes: true, Interactive: true})
-		keep(t, fmt.Sprintf("scattered-%d", seed), picture.AppendSVG(nil))
-	}
-}
-
 // ladders is a sheet of bands, each with two rails and a supply, and rungs of a switch, a resistor and a lamp.
 func ladders(parts int) *schematic.Sheet {
 	sheet := schematic.New("Ladders")
 	sheet.Size = "A1"
-	const rungs, pitch, high = 20, 7, 19
+	for band := 0; len(sheet.Parts) < parts; band++ {
+		addBand(sheet, 3+19*band, min(20, (parts-len(sheet.Parts)+2)/3))
+	}
+	return sheet
+}
+
+func addBand(sheet *schematic.Sheet, top, rungs int) {
 	add := func(kind *kinds.Kind, x, y int) {
 		sheet.Parts = append(sheet.Parts, schematic.Part{
 			Ref: fmt.Sprintf("%s%d", kind.Letter, len(sheet.Parts)+1), Kind: kind, At: schematic.Point{X: x, Y: y}, Values: kind.Tray[0].Values,
 		})
 	}
-	wire := func(points ...schematic.Point) {
-		sheet.Wires = append(sheet.Wires, schematic.Wire{ID: fmt.Sprintf("w%d", len(sheet.Wires)+1), Points: points})
+	wire := func(coordinates ...int) {
+		wire := schematic.Wire{ID: fmt.Sprintf("w%d", len(sheet.Wires)+1)}
+		for i := 0; i < len(coordinates); i += 2 {
+			wire.Points = append(wire.Points, schematic.Point{X: coordinates[i], Y: coordinates[i+1]})
+		}
+		sheet.Wires = append(sheet.Wires, wire)
 	}
-	for band := 0; len(sheet.Parts) < parts; band++ {
-		top := 3 + band*high
-		bottom := top + 16
-		add(kinds.DCSupply, 5, top+8)
-		right := 5 + pitch*min(rungs, (parts-len(sheet.Parts)+2)/3)
-		wire(schematic.Point{X: 5, Y: top + 6}, schematic.Point{X: 5, Y: top}, schematic.Point{X: right, Y: top}, schematic.Point{X: right, Y: top + 1})
-		wire(schematic.Point{X: 5, Y: top + 10}, schematic.Point{X: 5, Y: bottom}, schematic.Point{X: right, Y: bottom}, schematic.Point{X: right, Y: bottom - 1})
-		for x := 5 + pitch; x <= right; x += pitch {
-			add(kinds.Switch, x, top+3)
-			add(kinds.Resistor, x, top+8)
-			add(kinds.Lamp, x, top+13)
-			wire(schematic.Point{X: x, Y: top + 5}, schematic.Point{X: x, Y: top + 6})
-			wire(schematic.Point{X: x, Y: top + 10}, schematic.Point{X: x, Y: top + 11})
-			if x < right {
-				wire(schematic.Point{X: x, Y: top}, schematic.Point{X: x, Y: top + 1})
-				wire(schematic.Point{X: x, Y: bottom - 1}, schematic.Point{X: x, Y: bottom})
-			}
+	const left, pitch = 5, 7
+	bottom, right := top+16, left+pitch*rungs
+	add(kinds.DCSupply, left, top+8)
+	wire(left, top+6, left, top, right, top, right, top+1)
+	wire(left, top+10, left, bottom, right, bottom, right, bottom-1)
+	for x := left + pitch; x <= right; x += pitch {
+		add(kinds.Switch, x, top+3)
+		add(kinds.Resistor, x, top+8)
+		add(kinds.Lamp, x, top+13)
+		wire(x, top+5, x, top+6)
+		wire(x, top+10, x, top+11)
+		if x < right {
+			wire(x, top, x, top+1)
+			wire(x, bottom-1, x, bottom)
 		}
 	}
-	return sheet
 }
 
 func BenchmarkDrawing(b *testing.B) {

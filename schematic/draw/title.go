@@ -4,6 +4,7 @@ import (
 	"loopwright/schematic"
 	"loopwright/schematic/cases"
 	"loopwright/schematic/stroke"
+	"loopwright/solver"
 )
 
 // The title block at the lower right has the data fields of ISO 7200:2004. That standard gives it 180 mm (from memory);
@@ -92,15 +93,15 @@ func dash(text string) string {
 	return text
 }
 
-// audited says how far the numbers of the case can be trusted.
+// audited says how far the numbers of the case can be trusted. A case that its audit did not pass is not solved.
 func audited(solved *cases.Case) cell {
 	switch {
-	case !solved.Solved:
-		return cell{part: 1, text: "▲ This case has no solution; no values are shown."}
-	case !solved.Audit.Passed:
-		return cell{part: 1, text: "▲ The two methods do not agree; the values are not to be relied on."}
+	case solved.Solved:
+		return cell{part: 1, text: "Arithmetic checked by two methods; accuracy is that of the values entered.", ink: stroke.Blue}
+	case solved.Problem != nil && solved.Problem.Code == string(solver.Empty):
+		return cell{part: 1, text: "Nothing to solve yet."}
 	}
-	return cell{part: 1, text: "Arithmetic checked by two methods; accuracy is that of the values entered.", ink: stroke.Blue}
+	return cell{part: 1, text: "▲ This case has no solution; no values are shown."}
 }
 
 // drawn sets a row into its box: labels above in small grey letters, texts below, shortened where they do not fit.

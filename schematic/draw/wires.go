@@ -16,7 +16,7 @@ func wireGroups(groups []Group, drawing *trace.Drawing, interactive bool) []Grou
 	for i := range drawing.Sheet.Wires {
 		wire := &drawing.Sheet.Wires[i]
 		points := make([]stroke.Point, len(wire.Points))
-		var places []byte
+		places := make([]byte, 0, 8*len(wire.Points))
 		for j, p := range wire.Points {
 			points[j] = onGrid(p)
 			if j > 0 {
