@@ -59,7 +59,7 @@ function put(ref) {
   const { left } = lefts.reduce((a, b) => (b.cost < a.cost ? b : a));
   callout.style.left = left * scale + 'px';
   callout.style.top = top * scale + 'px';
-  lead(box, { left, top, right: left + width, bottom: top + height });
+  lead(box, { left, top, right: left + width, bottom: top + height }, group.getBBox());
 }
 
 function covered(area, ref) {
@@ -73,11 +73,11 @@ function covered(area, ref) {
   return cost;
 }
 
-function lead(box, card) {
+function lead(box, card, all) {
   const right = card.left > box.right;
   const y = Math.max(card.top + 12, Math.min(card.bottom - 12, (box.top + box.bottom) / 2));
   for (const [name, value] of Object.entries({
-    x1: right ? box.right + 6 : box.left - 6, y1: (box.top + box.bottom) / 2, x2: right ? card.left : card.right, y2: y,
+    x1: right ? all.x + all.width + 6 : all.x - 6, y1: (box.top + box.bottom) / 2, x2: right ? card.left : card.right, y2: y,
   })) leader.setAttribute(name, String(value));
   leader.toggleAttribute('hidden', card.left <= box.right && card.right >= box.left);
 }

@@ -19,12 +19,13 @@ export function obstacles(meant) {
   return {
     joins: (x, y) => joins.has(x + ',' + y),
     along: (x, y, direction) => (direction === 0 ? level : upright).has(x + ',' + y) && !wanted.has(x + ',' + y),
-    covered: (x, y) => bodies.some(box => inside(box, userX(x), userY(y))),
+    covered: (x, y) => bodies.some(box => inside(box, userX(x), userY(y), -step / 8)),
+    close: (x, y) => bodies.some(box => inside(box, userX(x), userY(y), step)),
   };
 }
 
-const inside = (box, x, y) =>
-  x > box.x + step / 8 && x < box.x + box.width - step / 8 && y > box.y + step / 8 && y < box.y + box.height - step / 8;
+const inside = (box, x, y, margin) =>
+  x > box.x - margin && x < box.x + box.width + margin && y > box.y - margin && y < box.y + box.height + margin;
 
 function eachPlace({ from, to }, visit) {
   const axis = from[1] === to[1] ? 0 : 1;

@@ -13,7 +13,7 @@ tally();
 /**
  * Sends edits as one batch, all or none.
  * @param {object[]} edits as in the sheet API
- * @returns {Promise<{ok: boolean, message: string, place: string, made: {refs: string[], wires: string[]}}>}
+ * @returns {Promise<{ok: boolean, message: string, place: string, made: {refs: string[], wires: string[], joined: string[]}}>}
  */
 export function send(edits) {
   return new Promise(resolve => {
@@ -42,7 +42,8 @@ async function pump() {
     const done = waiting.shift();
     tally();
     if (status >= 400) notice(answer.message);
-    done.resolve({ ok: status < 400, made: { refs: [], wires: [] }, place: '', ...answer });
+    else if (answer.made.joined?.length > 0) notice(answer.made.joined.join('. ') + '. Undo takes it back.');
+    done.resolve({ ok: status < 400, made: { refs: [], wires: [], joined: [] }, place: '', ...answer });
   }
   running = false;
   setState('saved');
@@ -71,7 +72,8 @@ function read(response, text) {
   if (response.status >= 400) {
     try { return JSON.parse(text).error; } catch { return { message: 'The server did not take the edit; try again.' }; }
   }
-  try { return { message: '', made: JSON.parse(response.headers.get('Loopwright-Made')) ?? undefined }; } catch { return { message: '' }; }
+  const made = JSON.parse(decodeURIComponent(response.headers.get('Loopwright-Made') ?? '%7B%7D'));
+  return { message: '', made };
 }
 
 function pauseOrOnline(pause) {

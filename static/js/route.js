@@ -5,6 +5,7 @@ const steps = [[1, 0], [0, 1], [-1, 0], [0, -1]];
 const corner = 3;    // what a corner costs, in steps
 const crossing = 2;  // what crossing another wire costs
 const body = 12;     // what a step across a part costs
+const near = 0.4;    // what a step close by a part costs
 const margin = 4;    // how far round both ends the way may swing, at least
 
 /**
@@ -12,6 +13,7 @@ const margin = 4;    // how far round both ends the way may swing, at least
  * @property {(x: number, y: number) => boolean} joins whether a wire that bends, ends or passes here would join something
  * @property {(x: number, y: number, direction: number) => boolean} along whether a wire lies here in that direction (0 level, 1 upright)
  * @property {(x: number, y: number) => boolean} covered whether a part covers the place
+ * @property {(x: number, y: number) => boolean} close whether a part lies close by
  */
 
 /**
@@ -62,7 +64,7 @@ function stepPrice(x, y, axis, last, obstacles) {
   if (last) return 1;
   if (obstacles.along(x, y, axis)) return Infinity;
   if (obstacles.joins(x, y)) return Infinity;
-  return 1 + (obstacles.along(x, y, 1 - axis) ? crossing : 0) + (obstacles.covered(x, y) ? body : 0);
+  return 1 + (obstacles.along(x, y, 1 - axis) ? crossing : 0) + (obstacles.covered(x, y) ? body : obstacles.close(x, y) ? near : 0);
 }
 
 // A corner on another wire would join it.

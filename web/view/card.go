@@ -14,8 +14,12 @@ import (
 // BuildCard is the callout of one part in one case.
 func BuildCard(sheet *schematic.Sheet, result *cases.Result, shown int, part *schematic.Part) Card {
 	card := Card{Ref: part.Ref, Kind: part.Kind.Title, Case: result.Cases[shown].Name}
-	for _, spec := range part.Kind.Specs {
-		card.Fields = append(card.Fields, field(spec, part))
+	for i, spec := range part.Kind.Specs {
+		if _, given := part.Values[spec.Name]; i < plainFields || given {
+			card.Fields = append(card.Fields, field(spec, part))
+		} else {
+			card.More = append(card.More, field(spec, part))
+		}
 	}
 	solved := &result.Cases[shown]
 	if part.Kind.Positions != nil {
@@ -26,6 +30,9 @@ func BuildCard(sheet *schematic.Sheet, result *cases.Result, shown int, part *sc
 	}
 	return card
 }
+
+// plainFields is how many values of a kind the card shows at once; of the others it shows those that were given.
+const plainFields = 3
 
 func field(spec kinds.Spec, part *schematic.Part) Field {
 	given, has := part.Values[spec.Name]

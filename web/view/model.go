@@ -143,6 +143,7 @@ type Card struct {
 	Kind     string
 	Editable bool
 	Fields   []Field
+	More     []Field // values that are seldom given
 	Computed []Figure
 	Limits   []Limit
 	State    *State
