@@ -32,6 +32,15 @@ func readBody(r *http.Request) ([]byte, error) {
 	return data, nil
 }
 
+// readForm reads the fields that a page sends.
+func readForm(r *http.Request) error {
+	err := r.ParseForm()
+	if tooLarge := (*http.MaxBytesError)(nil); err == nil || errors.As(err, &tooLarge) {
+		return err
+	}
+	return &problem{status: http.StatusBadRequest, message: "What the page sent cannot be read; load the page again."}
+}
+
 // decode reads an object, and refuses fields that it does not have.
 func decode(data []byte, to any) error {
 	err := json.Unmarshal(data, to, json.RejectUnknownMembers(true))

@@ -24,7 +24,7 @@ func (s *Server) changeShare(w http.ResponseWriter, r *http.Request) error {
 	if _, err := s.opened(r, store.Edit); err != nil {
 		return err
 	}
-	if err := r.ParseForm(); err != nil {
+	if err := readForm(r); err != nil {
 		return err
 	}
 	key := parameter(r, "key")

@@ -99,7 +99,7 @@ func (s *Server) editFromPage(w http.ResponseWriter, r *http.Request) error {
 	if err != nil {
 		return err
 	}
-	if err := r.ParseForm(); err != nil {
+	if err := readForm(r); err != nil {
 		return err
 	}
 	base, _ := strconv.Atoi(r.PostForm.Get("base")) // a page that has lost count is sent everything

@@ -49,7 +49,7 @@ func readExample(name string) (*schematic.Sheet, error) {
 
 // createFromPage answers POST /new: makes an empty sheet, or a copy of an example, and leads to it.
 func (s *Server) createFromPage(w http.ResponseWriter, r *http.Request) error {
-	if err := r.ParseForm(); err != nil {
+	if err := readForm(r); err != nil {
 		return err
 	}
 	sheet, err := sheetFromForm(r)

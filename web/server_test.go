@@ -199,3 +199,17 @@ func TestAServerNeedsAStore(t *testing.T) {
 		t.Error("a server without a store was made")
 	}
 }
+
+func TestAFormThatCannotBeReadIsRefused(t *testing.T) {
+	s := run(t)
+	key := s.create(lamp)
+	form := []string{"Content-Type", "application/x-www-form-urlencoded"}
+	for _, path := range []string{"/new", "/s/" + key + "/edit", "/s/" + key + "/share"} {
+		if got := s.send("POST", path, "title=%zz", form...); got.status != 400 {
+			t.Errorf("%s answers %d, want 400", path, got.status)
+		}
+		if got := s.send("POST", path, "title="+strings.Repeat("x", mostBody), form...); got.status != 413 {
+			t.Errorf("%s answers %d to more than 4 MiB, want 413", path, got.status)
+		}
+	}
+}

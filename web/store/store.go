@@ -51,7 +51,7 @@ type Store struct {
 }
 
 // held is how many sheets are kept in memory, counted in parts and wires.
-const held = 400_000
+const held = 200_000
 
 // Open opens the database in a file, and makes it when there is none. The caller must Close the store.
 func Open(ctx context.Context, name string) (*Store, error) {
