@@ -3,6 +3,7 @@ package web
 import (
 	"mime"
 	"net/http"
+	"strconv"
 	"strings"
 
 	"loopwright/schematic"
@@ -52,7 +53,9 @@ func (s *Server) sendDrawing(w http.ResponseWriter, r *http.Request) error {
 	}
 	name(w, "inline", solved.Sheet, ".svg")
 	w.Header().Set("Content-Type", "image/svg+xml")
-	picture := draw.Compose(solved.Sheet, solved.Result, draw.Options{Case: shown, Meshes: true})
+	picture := draw.Compose(solved.Sheet, solved.Result, draw.Options{
+		Case: shown, Meshes: true, Date: s.today(), Revision: strconv.Itoa(solved.Revision),
+	})
 	w.Write(picture.AppendSVG(nil))
 	return nil
 }

@@ -74,7 +74,9 @@ func start(t *testing.T, database string) *process {
 	if err != nil {
 		t.Fatalf("the server says nothing: %v", err)
 	}
-	return &process{command, "http://" + strings.TrimSpace(line)}
+	p := &process{command, "http://" + strings.TrimSpace(line)}
+	t.Cleanup(p.kill) // should the test end early
+	return p
 }
 
 // kill ends the process without a warning and waits until it is gone.
@@ -140,7 +142,6 @@ func TestWhatWasAnsweredSurvivesTheEndOfTheProcess(t *testing.T) {
 		sendUntilKilled(t, server, key, known, 1+random.Int64N(30))
 	}
 	server := start(t, database)
-	defer server.kill()
 	for number := range known.next {
 		known.send(t, server.address, key, number+1)
 	}

@@ -79,7 +79,8 @@ func (s *Store) tryCommit(ctx context.Context, id ID, batch Batch) (Answer, erro
 	return answer, err
 }
 
-// quick is up to which weight of its sheet a batch is planned by the writer itself when another came before it.
+// quick is up to which weight of its sheet, times its edits, a batch is planned by the writer itself when another came
+// before it. A longer one goes back, so that the writer is free for others.
 const quick = 2_000
 
 // apply writes a batch, planned anew when the sheet has another revision than it was planned for.
@@ -96,7 +97,7 @@ func (s *Store) apply(g *group, id ID, batch Batch, next *plan) (Answer, error) 
 		}
 	}
 	if current.revision != next.base {
-		if current.weight() > quick {
+		if current.weight()*len(batch.Edits) > quick {
 			return Answer{}, refused{errMoved}
 		}
 		if next, err = current.plan(context.Background(), g, id, batch); err != nil {
