@@ -24,7 +24,10 @@ type Result struct {
 
 // Timing says how long the stretches of the work took, for all cases together.
 type Timing struct {
-	Trace, Mesh, Solve, Audit time.Duration
+	Trace time.Duration // reading the geometry
+	Mesh  time.Duration // finding the meshes
+	Solve time.Duration // assembling, factorising and solving the equations
+	Audit time.Duration // checking the solutions
 }
 
 // Case is the solution of one operating case. Without a solution there is a Problem and nothing else.
@@ -60,9 +63,8 @@ type Supermesh struct {
 // Solve solves every case of a sheet. A case without a solution has its Problem and does not hide the others. The error
 // is ctx.Err(), wrapped, when the context ends first.
 func Solve(ctx context.Context, sheet *schematic.Sheet) (*Result, error) {
-	start := time.Now()
-	result := &Result{Drawing: trace.Trace(sheet)}
-	result.Timing.Trace = time.Since(start)
+	drawing := trace.Trace(sheet)
+	result := &Result{Drawing: drawing, Timing: Timing{Trace: drawing.Timing.Geometry, Mesh: drawing.Timing.Meshes}}
 	var err error
 	if sheet.System.AC() {
 		err = solveAll[complex128](ctx, sheet, result)
@@ -97,10 +99,10 @@ func solveAll[T solver.Scalar](ctx context.Context, sheet *schematic.Sheet, resu
 	if err != nil {
 		return err
 	}
-	result.Timing.Mesh += time.Since(start)
+	result.Timing.Solve = time.Since(start)
 	for i := range sheet.Cases {
 		c := newCase(sheet, &sheet.Cases[i])
-		if err := solveOne(ctx, plan, laws[i], result, &c); err != nil {
+		if err := solveOne(ctx, network, plan, laws[i], result, &c); err != nil {
 			return err
 		}
 		result.Cases = append(result.Cases, c)
@@ -118,7 +120,9 @@ func newCase(sheet *schematic.Sheet, c *schematic.Case) Case {
 	return solved
 }
 
-func solveOne[T solver.Scalar](ctx context.Context, plan *solver.Plan[T], laws []solver.Law[T], result *Result, c *Case) error {
+func solveOne[T solver.Scalar](
+	ctx context.Context, network *solver.Network[T], plan *solver.Plan[T], laws []solver.Law[T], result *Result, c *Case,
+) error {
 	solution, err := plan.Solve(ctx, laws)
 	var problem *solver.Problem
 	switch {
@@ -127,14 +131,15 @@ func solveOne[T solver.Scalar](ctx context.Context, plan *solver.Plan[T], laws [
 		return nil
 	case err != nil:
 		return err
-	case !solution.Audit.Passed:
-		c.Problem = disagreement(result.Drawing, solution.Audit)
-		return nil
 	}
 	result.Timing.Solve += solution.Timing.Solve
 	result.Timing.Audit += solution.Timing.Audit
+	if !solution.Audit.Passed {
+		c.Problem = disagreement(solution.Audit)
+		return nil
+	}
 	keep(result.Drawing, solution, c)
-	c.Equations = equations(result.Drawing, laws, c)
+	c.Equations = equations(result.Drawing, network, solution)
 	return nil
 }
 

@@ -1,8 +1,6 @@
 package cases
 
 import (
-	"math/cmplx"
-	"slices"
 	"strconv"
 	"strings"
 
@@ -10,248 +8,164 @@ import (
 	"loopwright/solver"
 )
 
-// Equation is one equation of the record, with symbols and with numbers. Of names the meshes that it is about: one for
-// a mesh, several for a supermesh, those through the branch for the constraint of a source or an open contact.
+// Equation is one equation of the record, with symbols and with numbers of four significant digits, in volts, amperes and
+// ohms. Of names the meshes that it is about: one for a mesh, several for a supermesh, those through the branch for the
+// constraint of a current source or an open contact.
+//
+// E is the voltage of a source, R a resistance (Z an impedance in AC), J the current that a source delivers, and i1, i2 …
+// are the mesh currents.
 type Equation struct {
 	Of      []string
 	Symbols string // "−E(G1) + R(F1)·i1 + R(P1)·(i1 − i2) = 0"
 	Numbers string // "−24 + 0.05·i1 + 288·(i1 − i2) = 0"
 }
 
-// record writes the equations of one case.
-type record[T solver.Scalar] struct {
-	drawing *trace.Drawing
-	laws    []solver.Law[T]
-	through [][]trace.Step // for each branch, the meshes through it with their sense
+// equations writes the equations of a solved network: Kirchhoff's voltage law around each mesh or supermesh, and then the
+// constraint of each branch that sets its current.
+func equations[T solver.Scalar](drawing *trace.Drawing, network *solver.Network[T], solution *solver.Solution[T]) []Equation {
+	w := writer[T]{drawing, solution.Laws}
+	list := solver.Equations(network, solution)
+	written := make([]Equation, len(list))
+	for i := range list {
+		written[i] = w.equation(&list[i])
+	}
+	return written
 }
 
-// equations writes Kirchhoff's voltage law around each mesh or supermesh, and then the constraint of each branch that
-// sets a current. A mesh that runs alone through such a branch has its current set by it and needs no voltage law.
-func equations[T solver.Scalar](drawing *trace.Drawing, laws []solver.Law[T], c *Case) []Equation {
-	r := record[T]{drawing, laws, make([][]trace.Step, len(drawing.Branches))}
+// meshCurrents writes the current of each branch in terms of mesh currents: "i1 − i2", "0" for a branch in no mesh.
+func meshCurrents(drawing *trace.Drawing) []string {
+	sums := make([]expression, len(drawing.Branches))
 	for m, mesh := range drawing.Meshes {
 		for _, step := range mesh.Path {
-			r.through[step.Branch] = append(r.through[step.Branch], trace.Step{Branch: m, Sense: step.Sense})
+			sums[step.Branch].add(step.Sense < 0, currentName(drawing, m))
 		}
 	}
-	var list []Equation
-	for _, group := range groups(len(drawing.Meshes), c.Supermeshes) {
-		if equation, ok := r.voltageLaw(group); ok {
-			list = append(list, equation)
-		}
+	texts := make([]string, len(sums))
+	for b := range sums {
+		texts[b] = sums[b].positiveFirst().text()
 	}
-	for b := range drawing.Branches {
-		if laws[b].Beta == 0 && len(r.through[b]) > 0 {
-			list = append(list, r.constraint(b))
-		}
-	}
-	return list
+	return texts
 }
 
-// groups lists the supermeshes and the meshes that are alone, in the order of their first mesh.
-func groups(meshes int, fused []Supermesh) [][]int {
-	of := make([]int, meshes)
-	for i := range of {
-		of[i] = i
-	}
-	for _, super := range fused {
-		for _, m := range super.Meshes {
-			of[m] = super.Meshes[0]
-		}
-	}
-	var list [][]int
-	for m := range of {
-		if of[m] != m {
-			continue
-		}
-		group := []int{}
-		for k := range of {
-			if of[k] == m {
-				group = append(group, k)
-			}
-		}
-		list = append(list, group)
-	}
-	return list
+// currentName is the symbol of a mesh current: i1 for the mesh m1.
+func currentName(drawing *trace.Drawing, mesh int) string {
+	return "i" + strings.TrimPrefix(drawing.Meshes[mesh].Name, "m")
 }
 
-// voltageLaw sums the voltages around a group of meshes: sources first, then drops in the order of the way. It is false
-// when a branch on the way sets its current, so that its voltage is not known from its law.
-func (r *record[T]) voltageLaw(group []int) (Equation, bool) {
-	var sources, drops expression
-	seen := map[int]bool{}
-	for _, m := range group {
-		for _, step := range r.drawing.Meshes[m].Path {
-			b := step.Branch
-			sense := r.senseIn(b, group)
-			if seen[b] || sense == 0 {
-				continue
-			}
-			seen[b] = true
-			law := &r.laws[b]
-			if law.Beta == 0 {
-				return Equation{}, false
-			}
-			emf, impedance := phasor(law.Gamma/law.Beta), phasor(-law.Alpha/law.Beta)
-			if emf != 0 {
-				sources.add(complex(float64(sense), 0)*emf, sense, "E("+r.name(b)+")", "")
-			}
-			if impedance != 0 {
-				currents := r.currents(b, sense)
-				drops.add(impedance, 1, r.letter()+"("+r.name(b)+")", currents)
-			}
+// writer writes the equations of one case.
+type writer[T solver.Scalar] struct {
+	drawing *trace.Drawing
+	laws    []solver.Law[T]
+}
+
+func (w *writer[T]) equation(e *solver.Equation[T]) Equation {
+	out := Equation{Of: make([]string, len(e.Of))}
+	for i, m := range e.Of {
+		out.Of[i] = w.drawing.Meshes[m].Name
+	}
+	var symbols, numbers expression
+	for i := range e.Terms {
+		w.term(&e.Terms[i], &symbols, &numbers)
+	}
+	right := phasor(e.Right)
+	out.Symbols = symbols.text() + " = " + w.right(e)
+	out.Numbers = numbers.text() + " = " + number(right)
+	return out
+}
+
+// term adds one term to an equation, once with symbols and once with numbers.
+func (w *writer[T]) term(term *solver.EquationTerm[T], symbols, numbers *expression) {
+	value := phasor(term.Value)
+	negative := imag(value) == 0 && real(value) < 0
+	if negative {
+		value = -value
+	}
+	switch term.Kind {
+	case solver.Source:
+		w.source(term, symbols)
+		numbers.add(negative, number(value))
+	case solver.Voltage:
+		factor := ""
+		if value != 1 {
+			factor = number(value) + "·"
+		}
+		symbols.add(negative, factor+"U("+w.name(term.Of)+")")
+		numbers.add(negative, factor+"U("+w.name(term.Of)+")")
+	default:
+		currents, against := w.currents(term.Meshes)
+		factor := number(value)
+		letter := factor // how a branch is controlled by another is only told with numbers
+		if term.Kind == solver.Drop {
+			letter = w.letter() + "(" + w.name(term.Branch) + ")"
+		}
+		if term.Kind == solver.Current && term.Of == term.Branch {
+			symbols.addAll(negative != against, currents)
+			numbers.addAll(negative != against, currents)
+			return
+		}
+		symbols.add(negative != against, letter+"·"+currents.factor())
+		numbers.add(negative != against, factor+"·"+currents.factor())
+	}
+}
+
+// source adds the symbol of a source's voltage with the sign in which the way runs through it.
+func (w *writer[T]) source(term *solver.EquationTerm[T], symbols *expression) {
+	law := &w.laws[term.Branch]
+	symbols.add(term.Value != law.Gamma/law.Beta, "E("+w.name(term.Branch)+")")
+}
+
+// currents is a sum of mesh currents whose first is positive; against tells that the sign is to be turned.
+func (w *writer[T]) currents(meshes []solver.SignedMesh) (sum expression, against bool) {
+	for _, m := range meshes {
+		name := currentName(w.drawing, m.Mesh)
+		if times := max(m.Sign, -m.Sign); times > 1 {
+			name = strconv.Itoa(times) + "·" + name
+		}
+		sum.add(m.Sign < 0, name)
+	}
+	sum = sum.positiveFirst()
+	if against = len(sum) > 0 && sum[0].negative; against {
+		for i := range sum {
+			sum[i].negative = !sum[i].negative
 		}
 	}
-	symbols := append(sources.symbols, drops.symbols...)
-	numbers := append(sources.numbers, drops.numbers...)
-	return Equation{r.names(group), sum(symbols) + " = 0", sum(numbers) + " = 0"}, true
+	return sum, against
 }
 
-// constraint says which current a branch sets.
-func (r *record[T]) constraint(b int) Equation {
-	law := &r.laws[b]
-	meshes := make([]int, 0, 2)
-	for _, step := range r.through[b] {
-		meshes = append(meshes, step.Branch)
+// right is the right side of an equation with symbols.
+func (w *writer[T]) right(e *solver.Equation[T]) string {
+	if e.Kind == solver.VoltageLaw {
+		return "0"
 	}
-	left := strings.Trim(r.currents(b, 1), "()")
-	value := phasor(law.Gamma / law.Alpha)
-	right, symbol := number(value), "I("+r.name(b)+")"
-	if value == 0 {
-		symbol = "0"
+	name, source := w.name(e.Branch), w.drawing.Sheet.Parts[w.drawing.Branches[e.Branch].Part].Kind.Delivers
+	switch {
+	case e.Kind == solver.Definition && e.Right != 0:
+		return "E(" + name + ")"
+	case e.Kind == solver.Constraint && e.Right == 0 && !source:
+		return "0 (" + name + " open)"
+	case e.Right == 0 && !source:
+		return "0"
 	}
-	return Equation{r.names(meshes), left + " = " + symbol, left + " = " + right}
+	current := w.laws[e.Branch].Gamma / w.laws[e.Branch].Alpha
+	if (e.Right == current) == source && current != 0 { // what a source delivers leaves it at its first pin
+		return "−J(" + name + ")"
+	}
+	return "J(" + name + ")"
 }
 
-// senseIn is how a group of meshes as a whole runs through a branch: 0 when two of them run against one another.
-func (r *record[T]) senseIn(b int, group []int) int {
-	sense := 0
-	for _, step := range r.through[b] {
-		if slices.Contains(group, step.Branch) {
-			sense += step.Sense
-		}
-	}
-	return sense
-}
-
-// currents is the current through a branch, counted in a sense, in terms of mesh currents: "i1" or "(i1 − i2)".
-func (r *record[T]) currents(b, sense int) string {
-	var terms []string
-	for _, step := range r.through[b] {
-		name := "i" + strings.TrimPrefix(r.drawing.Meshes[step.Branch].Name, "m")
-		if step.Sense*sense < 0 {
-			name = "−" + name
-		}
-		terms = append(terms, name)
-	}
-	slices.SortStableFunc(terms, func(a, b string) int { return strings.Compare(signLast(a), signLast(b)) })
-	if len(terms) == 1 && !strings.HasPrefix(terms[0], "−") {
-		return terms[0]
-	}
-	return "(" + sum(terms) + ")"
-}
-
-// signLast sorts terms with a plus in front before those with a minus.
-func signLast(term string) string {
-	if strings.HasPrefix(term, "−") {
-		return "1"
-	}
-	return "0"
-}
-
-func (r *record[T]) letter() string {
-	var value T
-	if _, ac := any(value).(complex128); ac {
+// letter is the symbol of what opposes a current.
+func (w *writer[T]) letter() string {
+	if w.drawing.Sheet.System.AC() {
 		return "Z"
 	}
 	return "R"
 }
 
 // name is the reference of a branch's part, with its pins where the part has several branches.
-func (r *record[T]) name(b int) string {
-	branch := &r.drawing.Branches[b]
-	several := branch.Index > 0 || (b+1 < len(r.drawing.Branches) && r.drawing.Branches[b+1].Part == branch.Part)
-	if several {
+func (w *writer[T]) name(b int) string {
+	list, branch := w.drawing.Branches, &w.drawing.Branches[b]
+	if branch.Index > 0 || (b+1 < len(list) && list[b+1].Part == branch.Part) {
 		return branch.Ref + " " + branch.Pins[0] + "–" + branch.Pins[1]
 	}
 	return branch.Ref
-}
-
-func (r *record[T]) names(meshes []int) []string {
-	names := make([]string, len(meshes))
-	for i, m := range meshes {
-		names[i] = r.drawing.Meshes[m].Name
-	}
-	return names
-}
-
-// expression collects terms twice: in symbols, and in numbers.
-type expression struct{ symbols, numbers []string }
-
-// add puts a term at the end: a factor with its sign, its symbol, and the currents it multiplies, if any.
-func (e *expression) add(value complex128, sense int, symbol, currents string) {
-	if sense < 0 {
-		symbol = "−" + symbol
-	}
-	figure := number(value)
-	if currents != "" {
-		symbol += "·" + currents
-		figure += "·" + currents
-	}
-	e.symbols = append(e.symbols, symbol)
-	e.numbers = append(e.numbers, figure)
-}
-
-// sum joins terms with their signs.
-func sum(terms []string) string {
-	if len(terms) == 0 {
-		return "0"
-	}
-	var out strings.Builder
-	for i, term := range terms {
-		bare, negative := strings.CutPrefix(term, "−")
-		switch {
-		case i == 0:
-			out.WriteString(term)
-		case negative:
-			out.WriteString(" − " + bare)
-		default:
-			out.WriteString(" + " + bare)
-		}
-	}
-	return out.String()
-}
-
-// number writes a figure of an equation with four significant digits.
-func number(value complex128) string {
-	if imag(value) == 0 {
-		return figure(real(value))
-	}
-	if real(value) == 0 {
-		return "j" + figure(imag(value))
-	}
-	sign := " + j"
-	if imag(value) < 0 {
-		sign = " − j"
-	}
-	return "(" + figure(real(value)) + sign + figure(cmplx.Abs(complex(imag(value), 0))) + ")"
-}
-
-func figure(value float64) string {
-	text := strconv.FormatFloat(value, 'g', 4, 64)
-	mantissa, exponent, scientific := strings.Cut(text, "e")
-	if scientific {
-		power, _ := strconv.Atoi(exponent) // FormatFloat writes a whole number there
-		mantissa += "×10" + superscript(power)
-	}
-	return strings.Replace(mantissa, "-", "−", 1)
-}
-
-func superscript(power int) string {
-	return strings.Map(func(r rune) rune {
-		if r == '-' {
-			return '⁻'
-		}
-		return []rune("⁰¹²³⁴⁵⁶⁷⁸⁹")[r-'0']
-	}, strconv.Itoa(power))
 }

@@ -85,6 +85,7 @@ type branchFile struct {
 	Voltage  *value    `json:"voltage"`
 	Floating bool      `json:"floating,omitempty"`
 	Current  value     `json:"current"`
+	Meshes   string    `json:"mesh_currents"` // the current as a sum of mesh currents
 }
 
 type meshFile struct {
@@ -177,13 +178,14 @@ func (c *Case) file(drawing *trace.Drawing) *solvedFile {
 
 func (c *Case) partFiles(drawing *trace.Drawing) []partFile {
 	parts := []partFile{}
+	sums := meshCurrents(drawing)
 	for b, branch := range drawing.Branches {
 		reading := c.Branches[b]
 		if branch.Index == 0 {
 			parts = append(parts, partFile{Ref: branch.Ref, Voltage: reading.voltage(), Floating: reading.Floating, Current: written(reading.Current)})
 		}
 		part := &parts[len(parts)-1]
-		part.Branches = append(part.Branches, branchFile{branch.Pins, reading.voltage(), reading.Floating, written(reading.Current)})
+		part.Branches = append(part.Branches, branchFile{branch.Pins, reading.voltage(), reading.Floating, written(reading.Current), sums[b]})
 		if !reading.Floating {
 			power := reading.Power()
 			part.Power.Re += real(power)

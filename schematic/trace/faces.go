@@ -154,12 +154,12 @@ func (g *plane) bends(a, b int) bool {
 
 // sourceFirst lets a mesh begin with its first source.
 func (d *Drawing) sourceFirst(path []Step) []Step {
-	first := slices.IndexFunc(path, func(step Step) bool { return d.delivers(step.Branch) })
+	first := slices.IndexFunc(path, func(step Step) bool { return d.Delivers(step.Branch) })
 	if first <= 0 {
 		return path
 	}
 	return slices.Concat(path[first:], path[:first])
 }
 
-// delivers reports whether a branch is that of a source.
-func (d *Drawing) delivers(b int) bool { return d.Sheet.Parts[d.Branches[b].Part].Kind.Delivers }
+// Delivers reports whether a branch is that of a source.
+func (d *Drawing) Delivers(b int) bool { return d.Sheet.Parts[d.Branches[b].Part].Kind.Delivers }

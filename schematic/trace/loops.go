@@ -203,13 +203,13 @@ func (s *loopSearch) choose() {
 func (d *Drawing) forward(steps []Step) []Step {
 	first := 0
 	for i, step := range steps {
-		a, b := d.delivers(step.Branch), d.delivers(steps[first].Branch)
+		a, b := d.Delivers(step.Branch), d.Delivers(steps[first].Branch)
 		if (a && !b) || (a == b && step.Branch < steps[first].Branch) {
 			first = i
 		}
 	}
 	wanted := 1
-	if d.delivers(steps[first].Branch) {
+	if d.Delivers(steps[first].Branch) {
 		wanted = -1
 	}
 	if steps[first].Sense == wanted {

@@ -3,6 +3,8 @@
 package trace
 
 import (
+	"time"
+
 	"loopwright/schematic"
 	"loopwright/schematic/kinds"
 	"loopwright/schematic/stroke"
@@ -60,17 +62,27 @@ type Drawing struct {
 	PinPotential  [][]int // by part and pin
 	Reference     int     // the potential of 0 V
 	Statements    []Statement
+	Timing        Timing
+}
+
+// Timing says how long the stretches of tracing took.
+type Timing struct {
+	Geometry time.Duration // what is joined, which potentials and branches there are
+	Meshes   time.Duration
 }
 
 // Trace reads a sheet. Its cost is O(n log n) where the drawing is plane and all circuits are closed on paper; each mesh
 // that is not a face of the drawing costs a search through the circuit.
 func Trace(sheet *schematic.Sheet) *Drawing {
+	start := time.Now()
 	d := &Drawing{Sheet: sheet, Joins: schematic.Join(sheet)}
 	d.findPotentials()
 	d.findBranches()
 	d.numberWires()
-	d.findMeshes()
 	d.state()
+	traced := time.Now()
+	d.findMeshes()
+	d.Timing = Timing{Geometry: traced.Sub(start), Meshes: time.Since(traced)}
 	return d
 }
 
