@@ -235,3 +235,15 @@ func (p *tab) keepPicture() {
 		p.Log("no picture:", err)
 	}
 }
+
+// evalPromise evaluates an expression that gives a promise, and waits for its value.
+func evalPromise[T any](p *tab, expression string) T {
+	p.Helper()
+	ctx, cancel := context.WithTimeout(p.ctx, patience)
+	defer cancel()
+	value, err := chromedp.Run(ctx, chromedp.Evaluate[T](expression, func(params *runtime.EvaluateParams) { params.AwaitPromise = new(true) }))
+	if err != nil {
+		p.Fatalf("%s: %v", expression, err)
+	}
+	return value
+}
