@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"io"
 	"net/http"
+	"reflect"
 	"strconv"
 	"strings"
 	"unicode/utf8"
@@ -57,8 +58,7 @@ func decode(data []byte, to any) error {
 	case errors.Is(err, json.ErrUnknownName) && errors.As(err, &semantic):
 		return &schematic.PlaceError{Place: placeOf(semantic.JSONPointer), Message: "there is no such field here; leave it out"}
 	case errors.As(err, &semantic):
-		return &schematic.PlaceError{Place: placeOf(semantic.JSONPointer),
-			Message: fmt.Sprintf("a JSON %s does not belong here", kindName(semantic.JSONKind))}
+		return &schematic.PlaceError{Place: placeOf(semantic.JSONPointer), Message: wanted(semantic.GoType)}
 	}
 	return err
 }
@@ -79,19 +79,19 @@ func placeOf(pointer jsontext.Pointer) string {
 	return place.String()
 }
 
-// kindName says what sort of JSON value it is.
-func kindName(kind jsontext.Kind) string {
-	switch kind {
-	case '"':
-		return "string"
-	case '0':
-		return "number of that form"
-	case '{':
-		return "object"
-	case '[':
-		return "list"
+// wanted says what is to be written where something else was.
+func wanted(target reflect.Type) string {
+	kind := reflect.Struct
+	if target != nil {
+		kind = target.Kind()
 	}
-	return kind.String()
+	switch kind {
+	case reflect.String:
+		return "write a text in quotation marks here"
+	case reflect.Int:
+		return "write a whole number here"
+	}
+	return "write an object in braces here"
 }
 
 // writeJSON answers a value as JSON. Nothing is written when it cannot be encoded.
