@@ -60,6 +60,7 @@ function showGhost(entry, at) {
 }
 
 function filter() {
+  find.value = find.value.replace(/^\//, ''); // the key that led here
   const words = find.value.toLowerCase().split(/\s+/).filter(Boolean);
   let left = 0;
   for (const entry of tray.querySelectorAll('[data-tray]')) {

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"maps"
 	"math/cmplx"
+	"regexp"
 	"slices"
 	"strings"
 
@@ -137,9 +138,17 @@ func listed(words []string) string {
 func equations(solved *cases.Case) []Equation {
 	list := make([]Equation, 0, len(solved.Equations))
 	for _, equation := range solved.Equations {
-		list = append(list, Equation{Of: strings.Join(equation.Of, ", "), Symbols: equation.Symbols, Numbers: equation.Numbers})
+		list = append(list, Equation{Of: strings.Join(equation.Of, ", "), Symbols: lowered(equation.Symbols), Numbers: lowered(equation.Numbers)})
 	}
 	return list
+}
+
+// meshCurrent is a mesh current as the record writes it: i1.
+var meshCurrent = regexp.MustCompile(`\bi[0-9]+\b`)
+
+// lowered writes the numbers of mesh currents as subscripts.
+func lowered(equation string) string {
+	return meshCurrent.ReplaceAllStringFunc(equation, func(name string) string { return "i" + subscript(name[1:]) })
 }
 
 func readings(sheet *schematic.Sheet, drawing *trace.Drawing, solved *cases.Case) []Reading {
@@ -147,11 +156,17 @@ func readings(sheet *schematic.Sheet, drawing *trace.Drawing, solved *cases.Case
 	for i, branch := range drawing.Branches {
 		part := &sheet.Parts[branch.Part]
 		reading := solved.Branches[i]
-		row := Reading{Ref: branch.Ref, Kind: part.Kind.Title, Pins: branch.Pins[0] + "–" + branch.Pins[1]}
+		row := Reading{Ref: branch.Ref, Kind: part.Kind.Title}
+		if len(part.Kind.Pins) > 2 {
+			row.Pins = branch.Pins[0] + "–" + branch.Pins[1]
+		}
 		current, power := reading.Current, reading.Voltage*cmplx.Conj(reading.Current)
 		if part.Kind.Delivers {
 			current, power = -current, -power
 			row.Pins = "delivers"
+			if real(power) < 0 {
+				current, power, row.Pins = -current, -power, "takes"
+			}
 		}
 		row.Current = amount(current, quantity.Ampere)
 		row.Voltage, row.Power = "floating", "—"
