@@ -34,12 +34,12 @@ func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solu
 // that could be real.
 const (
 	negligible = 0x1p-80
-	nothing    = 0x1p-90
+	nothing    = 0x1p-86
 )
 
 // zeroBelow is the magnitude below which values of a case are nothing but rounding.
-func zeroBelow(size float64, refinement sparse.Refinement) float64 {
-	return max(nothing*size, 16*refinement.Error)
+func zeroBelow(refinement sparse.Refinement) float64 {
+	return max(nothing*refinement.Size, 16*refinement.Error)
 }
 
 // branch gives current and voltage of a branch. What its law gives directly is taken from there.
@@ -67,20 +67,25 @@ func (s *meshSystem[T]) branch(b int, law *Law[T]) (j, u T) {
 	return j, u
 }
 
-// nodeVoltages walks from the reference through all that conducts and subtracts branch voltages on the way.
+// nodeVoltages finds the voltages of the nodes that have a reference.
 func (p *Plan[T]) nodeVoltages(solution *Solution[T], split *pieces) {
 	for node := range solution.FloatingNode {
 		solution.FloatingNode[node] = split.floating(node)
 	}
-	if !split.bound || p.network.Nodes == 0 {
+	p.walk.without = split.cut
+	p.addUp(solution.Node, solution.Voltage)
+}
+
+// addUp walks from the reference through all that conducts and subtracts the branch voltages on the way.
+func (p *Plan[T]) addUp(node, voltage []T) {
+	if p.network.Reference < 0 || p.network.Nodes == 0 {
 		return
 	}
-	p.walk.without = split.cut
 	p.walk.from(p.network.Reference)
-	for _, node := range p.walk.reached[1:] {
-		step := p.walk.step[node]
+	for _, k := range p.walk.reached[1:] {
+		step := p.walk.step[k]
 		before, _ := p.network.ends(step)
-		solution.Node[node] = solution.Node[before] - signed(step.Sense, solution.Voltage[step.Branch])
+		node[k] = node[before] - signed(step.Sense, voltage[step.Branch])
 	}
 }
 

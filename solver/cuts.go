@@ -111,7 +111,7 @@ func (g *cutGraph[T]) smallest(code Code, accept func(lump int) bool) *Problem {
 func (g *cutGraph[T]) wayBack(source int) []int {
 	var conducting []int
 	for b := range g.laws {
-		if !g.source(b) || g.laws[b].Gamma == 0 {
+		if b != source && (!g.source(b) || g.laws[b].Gamma == 0) {
 			conducting = append(conducting, b)
 		}
 	}

@@ -7,15 +7,12 @@ type groups struct {
 }
 
 func newGroups(n int) *groups {
-	g := &groups{parent: make([]int, n), size: make([]int, n)}
-	g.reset()
-	return g
-}
-
-func (g *groups) reset() {
-	for i := range g.parent {
+	block := make([]int, 2*n)
+	g := &groups{parent: block[:n], size: block[n:]}
+	for i := range n {
 		g.parent[i], g.size[i] = i, 1
 	}
+	return g
 }
 
 // of gives the representative of the group of i.

@@ -27,8 +27,10 @@ func newMembership(branches int, meshes []Mesh) *membership {
 	for b := range branches {
 		m.start[b+1] += m.start[b]
 	}
-	m.mesh, m.sense = make([]int, steps), make([]int, steps)
-	next := append([]int(nil), m.start[:branches]...)
+	block := make([]int, 2*steps+branches)
+	m.mesh, m.sense = block[:steps:steps], block[steps:2*steps:2*steps]
+	next := block[2*steps:]
+	copy(next, m.start)
 	for k, mesh := range meshes {
 		for _, step := range mesh.Path {
 			m.mesh[next[step.Branch]], m.sense[next[step.Branch]] = k, step.Sense
@@ -65,7 +67,7 @@ type meshSystem[T Scalar] struct {
 
 // newMeshSystem lays out the equations with the given row branches, and orders their elimination.
 func newMeshSystem[T Scalar](ctx context.Context, n *Network[T], through *membership, laws []Law[T], isRow func(b int) bool) (*meshSystem[T], error) {
-	s := &meshSystem[T]{network: n, through: through, row: make([]int, len(laws))}
+	s := &meshSystem[T]{network: n, through: through, row: make([]int, len(laws)), rows: make([]int, 0, len(laws))}
 	for b := range laws {
 		s.row[b] = -1
 		if isRow(b) {
@@ -74,19 +76,59 @@ func newMeshSystem[T Scalar](ctx context.Context, n *Network[T], through *member
 		}
 	}
 	size := len(n.Meshes) + len(s.rows)
-	var equations, unknowns []int
+	places := s.places(laws)
+	equations, unknowns := make([]int, 0, places), make([]int, 0, places)
 	s.ohms = 1
 	s.terms(laws, nil, func(equation, unknown int, _ T) {
 		equations, unknowns = append(equations, equation), append(unknowns, unknown)
 	})
 	pattern, slot := sparse.NewPattern(size, equations, unknowns)
-	symbolic, err := sparse.Analyze(ctx, pattern)
+	symbolic, err := sparse.Analyze(ctx, pattern, s.waiting(laws))
 	if err != nil {
 		return nil, err
 	}
 	s.slot, s.matrix, s.factor = slot, sparse.NewMatrix[T](pattern), sparse.NewLU[T](symbolic)
-	s.scale, s.x, s.sum = make([]float64, size), make([]wide.Number[T], size), make([]wide.Number[T], size)
+	numbers := make([]wide.Number[T], 2*size)
+	s.scale, s.x, s.sum = make([]float64, size), numbers[:size:size], numbers[size:]
 	return s, nil
+}
+
+// waiting marks the unknowns that have no coefficient of their own in their equation, or may have none: the voltages of
+// branches that may open, and the currents of meshes whose branches all have rows.
+func (s *meshSystem[T]) waiting(laws []Law[T]) []bool {
+	meshes := len(s.network.Meshes)
+	waiting := make([]bool, meshes+len(s.rows))
+	for m := range meshes {
+		waiting[m] = true
+	}
+	for b := range laws {
+		if r := s.row[b]; r >= 0 {
+			waiting[meshes+r] = true
+		} else if laws[b].Alpha != 0 {
+			through, _ := s.through.of(b)
+			for _, m := range through {
+				waiting[m] = false
+			}
+		}
+	}
+	return waiting
+}
+
+// places is the number of terms of the equations.
+func (s *meshSystem[T]) places(laws []Law[T]) int {
+	count := 0
+	for b := range laws {
+		through := s.through.start[b+1] - s.through.start[b]
+		if s.row[b] < 0 {
+			count += through * through
+			continue
+		}
+		count += 2*through + 1
+		for _, term := range laws[b].Terms {
+			count += 1 + s.through.start[term.Branch+1] - s.through.start[term.Branch]
+		}
+	}
+	return count
 }
 
 // holds reports whether the system has a row for each law that needs one.
@@ -165,7 +207,7 @@ func (s *meshSystem[T]) solve(ctx context.Context, laws []Law[T], gauge []bool) 
 	residual := func(r []T) { s.residual(r, laws, gauge) }
 	solved, err := s.factor.SolveSystem(ctx, s.matrix, func() sparse.Refinement {
 		refinement := s.factor.Refine(s.x, size, residual)
-		s.zero = zeroBelow(size, refinement)
+		s.zero = zeroBelow(refinement)
 		return refinement
 	})
 	return solved, err

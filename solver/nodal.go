@@ -34,12 +34,22 @@ func newNodalSystem[T Scalar](ctx context.Context, n *Network[T], laws []Law[T])
 		right:   make([]T, size), x: make([]wide.Number[T], size), ground: make([]bool, n.Nodes),
 		current: make([]T, len(laws)),
 	}
-	var rows, columns []int
+	places := n.Nodes + 5*len(laws)
+	for b := range laws {
+		places += 3 * len(laws[b].Terms)
+	}
+	rows, columns := make([]int, 0, places), make([]int, 0, places)
 	s.stamp(laws, 1, func(row, column int, _ T) {
 		rows, columns = append(rows, row), append(columns, column)
 	})
+	// A node voltage has no coefficient in its current law before the current of a branch is eliminated, and the current of
+	// an ideal source none in its law before a node voltage is.
+	waiting := make([]bool, size)
+	for k := range waiting {
+		waiting[k] = k < n.Nodes || laws[k-n.Nodes].Alpha == 0
+	}
 	pattern, slot := sparse.NewPattern(size, rows, columns)
-	symbolic, err := sparse.Analyze(ctx, pattern)
+	symbolic, err := sparse.Analyze(ctx, pattern, waiting)
 	if err != nil {
 		return nil, err
 	}
@@ -125,13 +135,9 @@ func (s *nodalSystem[T]) solve(ctx context.Context, laws []Law[T]) (bool, error)
 		s.matrix.Value[s.slot[next]] += value
 		next++
 	})
-	size := 0.0
-	for _, right := range s.right {
-		size = max(size, magnitude(right))
-	}
 	solved, err := s.factor.SolveSystem(ctx, s.matrix, func() sparse.Refinement {
 		refinement := s.factor.SolveRefined(s.matrix, s.x, s.right)
-		s.zero = zeroBelow(size, refinement)
+		s.zero = zeroBelow(refinement)
 		return refinement
 	})
 	for b := range s.current {

@@ -19,18 +19,19 @@ func findPieces[T Scalar](n *Network[T], laws []Law[T]) *pieces {
 		}
 	}
 	p := &pieces{of: make([]int, n.Nodes), cut: make([]bool, len(laws)), gauge: make([]bool, len(laws)), bound: n.Reference >= 0}
-	number := make(map[int]int, 1)
+	number := make([]int, n.Nodes) // of the piece of a representative, counted from 1
 	if p.bound && n.Nodes > 0 {
-		number[together.of(n.Reference)] = 0
+		p.count = 1
+		number[together.of(n.Reference)] = 1
 	}
 	for node := range n.Nodes {
 		root := together.of(node)
-		if _, known := number[root]; !known {
-			number[root] = len(number)
+		if number[root] == 0 {
+			p.count++
+			number[root] = p.count
 		}
-		p.of[node] = number[root]
+		p.of[node] = number[root] - 1
 	}
-	p.count = len(number)
 	for b := range laws {
 		from, to := n.Branches[b].From, n.Branches[b].To
 		if laws[b].open() && p.of[from] != p.of[to] {

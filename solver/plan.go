@@ -2,7 +2,6 @@ package solver
 
 import (
 	"context"
-	"errors"
 	"fmt"
 	"slices"
 	"time"
@@ -18,6 +17,11 @@ type Plan[T Scalar] struct {
 	compact *meshSystem[T]
 	full    *meshSystem[T] // with a row for every branch; made when it is first needed
 	nodal   *nodalSystem[T]
+
+	// The last solution, for responses around it; last is nil when there is none.
+	last  *meshSystem[T]
+	laws  []Law[T]
+	split *pieces
 }
 
 // Solve prepares a network and solves it once. The error is a *Problem when the network has no unique solution, wraps
@@ -112,6 +116,7 @@ func (p *Plan[T]) Solve(ctx context.Context, laws []Law[T]) (*Solution[T], error
 // SolveUnaudited is Solve without the audit, for the steps of an iteration whose last result is audited.
 func (p *Plan[T]) SolveUnaudited(ctx context.Context, laws []Law[T]) (*Solution[T], error) {
 	start := time.Now()
+	p.last = nil
 	if err := p.accept(laws); err != nil {
 		return nil, err
 	}
@@ -124,6 +129,7 @@ func (p *Plan[T]) SolveUnaudited(ctx context.Context, laws []Law[T]) (*Solution[
 		return nil, err
 	}
 	solution := p.solution(system, laws, split)
+	p.last, p.laws, p.split = system, solution.Laws, split
 	solution.Timing.Solve = time.Since(start)
 	return solution, nil
 }
@@ -160,22 +166,7 @@ func (p *Plan[T]) solveMeshes(ctx context.Context, laws []Law[T], split *pieces)
 	}
 	solved, err := p.full.solve(ctx, laws, split.gauge)
 	if !solved && err == nil {
-		err = p.singular(laws)
+		err = p.singular(p.full, laws)
 	}
 	return p.full, err
-}
-
-// singular names what is at fault when the graph has shown nothing.
-func (p *Plan[T]) singular(laws []Law[T]) error {
-	if !independent(p.network.Meshes) {
-		return errors.New("the meshes are not independent: one of them is a combination of others")
-	}
-	problem := &Problem{Code: Undetermined}
-	for b := range laws {
-		if len(laws[b].Terms) > 0 {
-			problem.Code = ControlLoop
-			problem.Branches = append(problem.Branches, b)
-		}
-	}
-	return problem
 }

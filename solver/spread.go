@@ -16,9 +16,16 @@ type spread[T Scalar] struct {
 }
 
 func newSpread[T Scalar](n *Network[T], branches []int) *spread[T] {
+	nodes := n.Nodes
+	block := make([]int, 5*nodes+1+2*len(branches))
+	part := func(length int) []int {
+		taken := block[:length:length]
+		block = block[length:]
+		return taken
+	}
 	s := &spread[T]{
-		network: n, start: make([]int, n.Nodes+1),
-		step: make([]Step, n.Nodes), depth: make([]int, n.Nodes), seen: make([]int, n.Nodes),
+		network: n, start: part(nodes + 1), at: part(2 * len(branches)),
+		step: make([]Step, nodes), depth: part(nodes), seen: part(nodes), reached: part(nodes)[:0],
 	}
 	for _, b := range branches {
 		s.start[n.Branches[b].From+1]++
@@ -27,8 +34,8 @@ func newSpread[T Scalar](n *Network[T], branches []int) *spread[T] {
 	for node := range n.Nodes {
 		s.start[node+1] += s.start[node]
 	}
-	s.at = make([]int, s.start[n.Nodes])
-	next := append([]int(nil), s.start[:n.Nodes]...)
+	next := part(nodes)
+	copy(next, s.start)
 	for _, b := range branches {
 		for _, node := range [2]int{n.Branches[b].From, n.Branches[b].To} {
 			s.at[next[node]] = b

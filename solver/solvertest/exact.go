@@ -25,7 +25,11 @@ func SolveExactly(n *solver.Network[float64]) (*Exact, bool) {
 	for b := range n.Branches {
 		rows = append(rows, branchLaw(n, b, unknowns))
 	}
-	for node, piece := range lowestNodes(n) {
+	laws := make([]solver.Law[float64], len(n.Branches))
+	for b := range laws {
+		laws[b] = n.Branches[b].Law
+	}
+	for node, piece := range lowestNodes(n, laws) {
 		if piece == node {
 			row := zeros(unknowns + 1)
 			row[node].SetInt64(1)
@@ -81,27 +85,6 @@ func branchLaw(n *solver.Network[float64], b, unknowns int) []*big.Rat {
 	}
 	add(row[unknowns], law.Gamma)
 	return row
-}
-
-// lowestNodes gives for each node the lowest node that it hangs together with, without open branches.
-func lowestNodes(n *solver.Network[float64]) []int {
-	lowest := make([]int, n.Nodes)
-	for node := range lowest {
-		lowest[node] = node
-	}
-	for changed := true; changed; {
-		changed = false
-		for _, branch := range n.Branches {
-			law := branch.Law
-			if law.Beta == 0 && law.Gamma == 0 && len(law.Terms) == 0 {
-				continue
-			}
-			least := min(lowest[branch.From], lowest[branch.To])
-			changed = changed || lowest[branch.From] != least || lowest[branch.To] != least
-			lowest[branch.From], lowest[branch.To] = least, least
-		}
-	}
-	return lowest
 }
 
 // eliminate brings the augmented rows to reduced echelon form.

@@ -21,7 +21,7 @@ type Mix struct {
 	Admittance, Row float64 // conductances; impedances that keep their row
 }
 
-// Real draws laws of direct current from the mix.
+// RealLaws draws laws of direct current from the mix.
 func (m Mix) RealLaws(random *rand.Rand) Laws[float64] {
 	return draw(m, random, func() float64 { return math.Pow(10, m.Decades*(random.Float64()-0.5)) },
 		func(size float64) float64 { return size * float64(1+random.IntN(3)) })

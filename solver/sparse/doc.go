@@ -46,3 +46,10 @@ func Scaled[T Scalar](x T, factor float64) T {
 	}
 	return x
 }
+
+// carve takes the next n numbers from a block, so that many slices cost one allocation.
+func carve(block *[]int, n int) []int {
+	part := (*block)[:n:n]
+	*block = (*block)[n:]
+	return part
+}

@@ -9,23 +9,23 @@ import (
 
 // How large a diagonal entry must be, against the largest entry of its column, to be taken as pivot.
 const (
-	// Lenient keeps to the order of elimination, and so to the sparsity, as long as refinement can recover what it costs in
-	// accuracy.
-	Lenient = 1e-3
+	// Lenient keeps to the order of elimination, and so to the sparsity, as long as refinement can recover what that costs
+	// in accuracy.
+	Lenient = 1e-8
 	// Strict takes the largest entry: partial pivoting.
 	Strict = 1
 )
 
 // growthLimit is how small a pivot that Refactor takes over may be against the largest entry below it.
-const growthLimit = 1e-4
+const growthLimit = 1e-9
 
-// suspicious is how small a pivot must be against its column before it is tested for being nothing but rounding.
-const suspicious = 1e-8
+// suspicious is how small a pivot must be against its column to be taken for what rounding may have left of zero.
+const suspicious = 1e-10
 
 // pollEvery is the number of columns between two looks at the context.
 const pollEvery = 128
 
-// Singular is the error of a matrix without inverse.
+// Singular is the error of a matrix in whose elimination no pivot was left.
 type Singular struct {
 	Column int // the column of A in which no pivot was left
 	Rank   int // the number of columns eliminated before it
@@ -49,10 +49,11 @@ type LU[T Scalar] struct {
 	rowAt        []int // row rowAt[k] of A is the k-th pivot row
 	position     []int // inverse of rowAt; −1 while a row is no pivot row
 	complete     bool
+	doubtful     bool // a pivot may be nothing but rounding
+	null         []T  // of a singular matrix: see NullVector
 
 	x     []T // one dense column
 	reach reach
-	sums  []float64
 
 	remainder []T // of iterative refinement
 	sum       []wide.Number[T]
@@ -61,12 +62,20 @@ type LU[T Scalar] struct {
 // NewLU prepares for matrices on the analysed pattern.
 func NewLU[T Scalar](symbolic *Symbolic) *LU[T] {
 	n := symbolic.Pattern.N
+	block := make([]int, 9*n+2)
+	values := make([]T, 2*n)
+	expected := symbolic.Pattern.Entries()
 	return &LU[T]{
 		symbolic: symbolic,
-		lStart:   make([]int, n+1), uStart: make([]int, n+1),
-		pivot: make([]T, n), rowAt: make([]int, n), position: make([]int, n),
-		x:     make([]T, n),
-		reach: newReach(n),
+		lStart:   carve(&block, n+1), uStart: carve(&block, n+1),
+		lRow: make([]int, 0, expected), lValue: make([]T, 0, expected),
+		uRow: make([]int, 0, expected), uValue: make([]T, 0, expected),
+		pivot: values[:n:n], rowAt: carve(&block, n), position: carve(&block, n),
+		x: values[n:],
+		reach: reach{
+			stack: carve(&block, n), top: n, path: carve(&block, n), at: carve(&block, n),
+			mark: carve(&block, n), search: carve(&block, n),
+		},
 	}
 }
 
@@ -85,11 +94,13 @@ func (f *LU[T]) Factor(ctx context.Context, a *Matrix[T], threshold float64) err
 		}
 		f.reach.find(a.Row[a.Start[column]:a.Start[column+1]], f.position, f.lStart, f.lRow)
 		f.eliminate(a, column)
-		row := f.choose(column, threshold)
-		if row < 0 || f.onlyRounding(a, column, row) {
+		row, largest := f.choose(column, threshold)
+		if row < 0 {
+			f.keepNull(k)
 			f.clear()
 			return &Singular{Column: column, Rank: k}
 		}
+		f.suspect(f.x[row], largest)
 		f.store(k, row)
 		f.prune(k, row)
 	}
@@ -104,7 +115,7 @@ func (f *LU[T]) begin(a *Matrix[T]) {
 	if a.Pattern != f.symbolic.Pattern && a.N != f.symbolic.Pattern.N {
 		panic(errLength)
 	}
-	f.complete = false
+	f.complete, f.doubtful, f.null = false, false, nil
 	f.lRow, f.lValue = f.lRow[:0], f.lValue[:0]
 	f.uRow, f.uValue = f.uRow[:0], f.uValue[:0]
 	for i := range f.position {
@@ -132,24 +143,21 @@ func (f *LU[T]) eliminate(a *Matrix[T], column int) {
 	}
 }
 
-// choose gives the pivot row for the column in x, or −1 when all candidates are zero.
-func (f *LU[T]) choose(column int, threshold float64) int {
-	best, largest := -1, 0.0
+// choose gives the pivot row for the column in x, or −1 when all candidates are zero, and the largest value in the column.
+func (f *LU[T]) choose(column int, threshold float64) (row int, largest float64) {
+	row = -1
+	best := 0.0
 	for _, i := range f.reach.found() {
-		if f.position[i] >= 0 {
-			continue
+		size := Magnitude(f.x[i])
+		largest = max(largest, size)
+		if size > best && f.position[i] < 0 {
+			row, best = i, size
 		}
-		if size := Magnitude(f.x[i]); size > largest {
-			best, largest = i, size
-		}
 	}
-	if best < 0 {
-		return -1
+	if row >= 0 && f.position[column] < 0 && Magnitude(f.x[column]) >= threshold*best && f.x[column] != 0 {
+		row = column
 	}
-	if f.position[column] < 0 && Magnitude(f.x[column]) >= threshold*largest {
-		return column
-	}
-	return best
+	return row, largest
 }
 
 // store moves x into the factors with row as k-th pivot row and leaves x zero.
@@ -179,42 +187,9 @@ func (f *LU[T]) clear() {
 	}
 }
 
-// onlyRounding reports whether no candidate of the column in x stands out of the rounding of the terms that were summed
-// to it. Such a pivot would be zero in exact arithmetic.
-func (f *LU[T]) onlyRounding(a *Matrix[T], column, row int) bool {
-	largest := 0.0
-	for p := a.Start[column]; p < a.Start[column+1]; p++ {
-		largest = max(largest, Magnitude(a.Value[p]))
+// suspect notes a pivot that is so small against its column that it may be nothing but rounding: see SolveSystem.
+func (f *LU[T]) suspect(pivot T, largest float64) {
+	if Magnitude(pivot) <= suspicious*largest {
+		f.doubtful = true
 	}
-	for _, i := range f.reach.found() {
-		largest = max(largest, Magnitude(f.x[i]))
-	}
-	if Magnitude(f.x[row]) > suspicious*largest {
-		return false
-	}
-	if f.sums == nil {
-		f.sums = make([]float64, len(f.x))
-	}
-	sums := f.sums
-	for p := a.Start[column]; p < a.Start[column+1]; p++ {
-		sums[a.Row[p]] = Magnitude(a.Value[p])
-	}
-	for _, i := range f.reach.found() {
-		if j := f.position[i]; j >= 0 {
-			size := Magnitude(f.x[i])
-			for p := f.lStart[j]; p < f.lStart[j+1]; p++ {
-				sums[f.lRow[p]] += size * Magnitude(f.lValue[p])
-			}
-		}
-	}
-	rounding := true
-	for _, i := range f.reach.found() {
-		if f.position[i] < 0 && Magnitude(f.x[i]) > 8*epsilon*sums[i] {
-			rounding = false
-		}
-	}
-	for _, i := range f.reach.found() {
-		sums[i] = 0
-	}
-	return rounding
 }

@@ -8,15 +8,13 @@ import (
 // order eliminates variables of least approximate degree until none is left, and gives the order of the columns.
 func (q *quotient) order(ctx context.Context) ([]int, error) {
 	columns := make([]int, 0, q.n)
-	q.buckets = newBuckets(q.n)
-	for i := q.n - 1; i >= 0; i-- {
-		if q.weight[i] > 0 {
-			q.buckets.add(i, q.degree[i])
-		}
-	}
+	q.fill(false)
 	for step := 0; q.left > 0; step++ {
 		if step%pollEvery == 0 && ctx.Err() != nil {
 			return nil, fmt.Errorf("ordering stopped: %w", ctx.Err())
+		}
+		if q.buckets.count == 0 {
+			q.fill(true)
 		}
 		pivot := q.buckets.takeLeast()
 		q.left -= q.weight[pivot]
@@ -31,6 +29,16 @@ func (q *quotient) order(ctx context.Context) ([]int, error) {
 		}
 	}
 	return append(columns, q.dense...), nil
+}
+
+// fill puts the variables that wait, or those that do not, into the buckets.
+func (q *quotient) fill(waiting bool) {
+	for i := q.n - 1; i >= 0; i-- {
+		if q.weight[i] > 0 && q.waiting[i] == waiting {
+			q.waiting[i] = false
+			q.buckets.add(i, q.degree[i])
+		}
+	}
 }
 
 // form makes the pivot an element, whose clique is all that it is joined to. The elements that it had become part of it.
@@ -57,7 +65,11 @@ func (q *quotient) include(i int, clique []int, size int) ([]int, int) {
 		return clique, size
 	}
 	q.mark[i] = q.stamp
-	q.buckets.remove(i, q.degree[i])
+	if q.waiting[i] {
+		q.waiting[i] = false
+	} else {
+		q.buckets.remove(i, q.degree[i])
+	}
 	return append(clique, i), size + q.weight[i]
 }
 

@@ -31,10 +31,12 @@ func NewPattern(n int, rows, columns []int) (pattern *Pattern, slot []int) {
 	if len(rows) != len(columns) {
 		panic(errLength)
 	}
-	byRow := countingSort(n, rows, nil)
-	order := countingSort(n, columns, byRow)
-	pattern = &Pattern{N: n, Start: make([]int, n+1), Row: make([]int, 0, len(rows))}
-	slot = make([]int, len(rows))
+	block := make([]int, 5*len(rows)+2*(n+1))
+	next := carve(&block, n+1)
+	byRow := countingSort(rows, nil, next, carve(&block, len(rows)))
+	order := countingSort(columns, byRow, next, carve(&block, len(rows)))
+	pattern = &Pattern{N: n, Start: carve(&block, n+1), Row: carve(&block, len(rows))[:0]}
+	slot = carve(&block, len(rows))
 	column := 0
 	for index, k := range order {
 		for column < columns[k] {
@@ -54,16 +56,16 @@ func NewPattern(n int, rows, columns []int) (pattern *Pattern, slot []int) {
 	return pattern, slot
 }
 
-// countingSort orders 0 … len(keys)−1 by key, keeping the order of first (nil: ascending) among equal keys.
-func countingSort(n int, keys, first []int) []int {
-	next := make([]int, n+1)
+// countingSort writes the order of 0 … len(keys)−1 by key, keeping the order of first (nil: ascending) among equal keys. next
+// is scratch with one place more than there are keys to tell apart.
+func countingSort(keys, first, next, order []int) []int {
+	clear(next)
 	for _, key := range keys {
 		next[key+1]++
 	}
-	for key := range n {
+	for key := range len(next) - 1 {
 		next[key+1] += next[key]
 	}
-	order := make([]int, len(keys))
 	for position := range keys {
 		k := position
 		if first != nil {
@@ -75,26 +77,25 @@ func countingSort(n int, keys, first []int) []int {
 	return order
 }
 
-// Transpose gives the pattern of the transposed matrix; from[p] is where its entry p stands in the original.
-func (p *Pattern) Transpose() (transposed *Pattern, from []int) {
-	t := &Pattern{N: p.N, Start: make([]int, p.N+1), Row: make([]int, p.Entries())}
-	from = make([]int, p.Entries())
+// Transpose gives the pattern of the transposed matrix.
+func (p *Pattern) Transpose() *Pattern {
+	block := make([]int, 2*p.N+1+p.Entries())
+	t := &Pattern{N: p.N, Start: carve(&block, p.N+1), Row: carve(&block, p.Entries())}
 	for _, i := range p.Row {
 		t.Start[i+1]++
 	}
 	for i := range p.N {
 		t.Start[i+1] += t.Start[i]
 	}
-	next := append([]int(nil), t.Start[:p.N]...)
+	next := carve(&block, p.N)
+	copy(next, t.Start)
 	for j := range p.N {
-		for q := p.Start[j]; q < p.Start[j+1]; q++ {
-			i := p.Row[q]
+		for _, i := range p.Row[p.Start[j]:p.Start[j+1]] {
 			t.Row[next[i]] = j
-			from[next[i]] = q
 			next[i]++
 		}
 	}
-	return t, from
+	return t
 }
 
 // Zero sets all values to zero.

@@ -21,6 +21,7 @@ type quotient struct {
 	size     []int   // of an element: their weight
 	absorbed []bool  // of an element: all of it is part of another one
 
+	waiting []bool // of a variable: it is not eliminated before it belongs to an element
 	buckets buckets
 	mark    []int // mark[i] == stamp: variable i belongs to the present clique
 	stamp   int
@@ -36,12 +37,19 @@ type quotient struct {
 
 func newQuotient(n, elements int) *quotient {
 	total := n + elements
+	block := make([]int, 10*n+1+3*total)
+	lists := make([][]int, 2*n+total)
+	flags := make([]bool, total+n)
 	q := &quotient{
-		n: n, variables: make([][]int, n), elements: make([][]int, n),
-		weight: make([]int, n), degree: make([]int, n), next: make([]int, n), last: make([]int, n),
-		clique: make([][]int, total), size: make([]int, total), absorbed: make([]bool, total),
-		mark: make([]int, total), outside: make([]int, total), base: 1,
-		hash: make([]int, n), chain: make([]int, n), chains: make([]int, n), left: n,
+		n: n, variables: lists[:n], elements: lists[n : 2*n], clique: lists[2*n:],
+		weight: carve(&block, n), degree: carve(&block, n), next: carve(&block, n), last: carve(&block, n),
+		size: carve(&block, total), absorbed: flags[:total], waiting: flags[total:],
+		mark: carve(&block, total), outside: carve(&block, total), base: 1,
+		hash: carve(&block, n), chain: carve(&block, n), chains: carve(&block, n), left: n,
+		buckets: buckets{head: carve(&block, n+1), next: carve(&block, n), previous: carve(&block, n)},
+	}
+	for degree := range q.buckets.head {
+		q.buckets.head[degree] = -1
 	}
 	for i := range n {
 		q.weight[i], q.next[i], q.last[i], q.chains[i] = 1, -1, i, -1
@@ -53,7 +61,7 @@ func newQuotient(n, elements int) *quotient {
 func newSymmetricQuotient(p *Pattern) *quotient {
 	n := p.N
 	q := newQuotient(n, 0)
-	transposed, _ := p.Transpose()
+	transposed := p.Transpose()
 	memory := make([]int, 0, 2*p.Entries())
 	for j := range n {
 		from := len(memory)
@@ -83,7 +91,7 @@ func newSymmetricQuotient(p *Pattern) *quotient {
 func newColumnQuotient(p *Pattern) *quotient {
 	n := p.N
 	q := newQuotient(n, n)
-	transposed, _ := p.Transpose()
+	transposed := p.Transpose()
 	limit := denseLimit(n)
 	for i := range n {
 		columns := transposed.Row[transposed.Start[i]:transposed.Start[i+1]]
@@ -144,14 +152,7 @@ type buckets struct {
 	head           []int // by degree; −1 for none
 	next, previous []int
 	least          int // no bucket below it holds anything
-}
-
-func newBuckets(n int) buckets {
-	b := buckets{head: make([]int, n+1), next: make([]int, n), previous: make([]int, n)}
-	for degree := range b.head {
-		b.head[degree] = -1
-	}
-	return b
+	count          int
 }
 
 func (b *buckets) add(i, degree int) {
@@ -162,9 +163,11 @@ func (b *buckets) add(i, degree int) {
 	}
 	b.head[degree] = i
 	b.least = min(b.least, degree)
+	b.count++
 }
 
 func (b *buckets) remove(i, degree int) {
+	b.count--
 	if b.previous[i] >= 0 {
 		b.next[b.previous[i]] = b.next[i]
 	} else {

@@ -12,14 +12,6 @@ type reach struct {
 	search []int // where the search of column j of L ends: see prune
 }
 
-func newReach(n int) reach {
-	return reach{
-		stack: make([]int, n), top: n,
-		path: make([]int, n), at: make([]int, n),
-		mark: make([]int, n), search: make([]int, n),
-	}
-}
-
 // found gives the rows of the last search, each after all rows whose elimination changes it.
 func (r *reach) found() []int { return r.stack[r.top:] }
 

@@ -13,13 +13,13 @@ func (f *LU[T]) Refactor(a *Matrix[T]) bool {
 	if !f.complete {
 		return false
 	}
-	f.complete = false
+	f.complete, f.doubtful, f.null = false, false, nil
 	x := f.x
 	for k, column := range f.symbolic.Order {
 		for p := a.Start[column]; p < a.Start[column+1]; p++ {
 			x[f.position[a.Row[p]]] = a.Value[p]
 		}
-		f.eliminateAgain(k)
+		above := f.eliminateAgain(k)
 		pivot := x[k]
 		x[k] = 0
 		largest := 0.0
@@ -32,6 +32,7 @@ func (f *LU[T]) Refactor(a *Matrix[T]) bool {
 		if size := Magnitude(pivot); !(size > 0 && size >= growthLimit*largest) {
 			return false
 		}
+		f.suspect(pivot, max(above, largest))
 		f.pivot[k] = pivot
 	}
 	f.complete = true
@@ -39,7 +40,8 @@ func (f *LU[T]) Refactor(a *Matrix[T]) bool {
 }
 
 // eliminateAgain applies the earlier columns of L to x in the order that Factor found, and moves column k of U out of x.
-func (f *LU[T]) eliminateAgain(k int) {
+// It gives the largest value of that column.
+func (f *LU[T]) eliminateAgain(k int) (largest float64) {
 	x := f.x
 	for p := f.uStart[k]; p < f.uStart[k+1]; p++ {
 		j := f.uRow[p]
@@ -49,10 +51,12 @@ func (f *LU[T]) eliminateAgain(k int) {
 		if xj == 0 {
 			continue
 		}
+		largest = max(largest, Magnitude(xj))
 		rows := f.lRow[f.lStart[j]:f.lStart[j+1]]
 		values := f.lValue[f.lStart[j]:f.lStart[j+1]]
 		for q, row := range rows {
 			x[row] -= values[q] * xj
 		}
 	}
+	return largest
 }

@@ -28,14 +28,17 @@ const (
 // SolveSystem factorises a matrix and refines the solution with what refine does, until that converges: first with the
 // pivots of the matrix before, then with lenient and at last with strict pivoting. It reports false when none does: the
 // matrix is singular to rounding. The error is that of ctx.
+//
+// Where a pivot may be nothing but what rounding has left of zero, the right side may still happen to fit. Then another
+// right side must converge too.
 func (f *LU[T]) SolveSystem(ctx context.Context, a *Matrix[T], refine func() Refinement) (bool, error) {
-	if f.Refactor(a) && refine().Converged {
+	if f.Refactor(a) && refine().Converged && f.sound(a) {
 		return true, nil
 	}
 	for _, threshold := range [2]float64{Lenient, Strict} {
 		var singular *Singular
 		err := f.Factor(ctx, a, threshold)
-		if err == nil && refine().Converged {
+		if err == nil && refine().Converged && f.sound(a) {
 			return true, nil
 		}
 		if err != nil && !errors.As(err, &singular) {
@@ -45,10 +48,31 @@ func (f *LU[T]) SolveSystem(ctx context.Context, a *Matrix[T], refine func() Ref
 	return false, nil
 }
 
+// sound reports whether no pivot is in doubt, or a right side that fits no special matrix converges all the same.
+func (f *LU[T]) sound(a *Matrix[T]) bool {
+	if !f.doubtful {
+		return true
+	}
+	x, b := make([]wide.Number[T], a.N), make([]T, a.N)
+	unruly(b)
+	return f.SolveRefined(a, x, b).Converged
+}
+
+// unruly fills a vector with values between 1 and 2 that follow no pattern, from a linear congruential generator.
+func unruly[T Scalar](b []T) {
+	var one T = 1
+	state := uint64(1)
+	for i := range b {
+		state = state*6364136223846793005 + 1442695040888963407
+		b[i] = Scaled(one, 1+float64(state>>11)/(1<<53))
+	}
+}
+
 // Refinement says how an iterative refinement went.
 type Refinement struct {
 	Steps     int
 	Converged bool    // every value has settled
+	Size      float64 // the largest of the values and of what the right side is made of
 	Error     float64 // estimate of what the values are still off by at most: a multiple of the rounding of the remainder
 }
 
@@ -87,21 +111,21 @@ func (f *LU[T]) Refine(x []wide.Number[T], size float64, residual func(r []T)) R
 			largest = max(largest, Magnitude(x[i].Value))
 		}
 		if change <= negligible*largest {
-			return Refinement{Steps: step, Converged: !math.IsInf(largest, 0), Error: change}
+			return Refinement{Steps: step, Converged: !math.IsInf(largest, 0), Size: largest, Error: change}
 		}
 		if step > 1 {
 			rate := change / before
 			if !(rate <= stalledRate) {
 				converged := settled(x, r, stalledChange, stalledNegligible*largest)
-				return Refinement{Steps: step, Converged: converged, Error: change}
+				return Refinement{Steps: step, Converged: converged, Size: largest, Error: change}
 			}
 			if settled(x, r, settledChange/rate, negligible*largest) {
-				return Refinement{Steps: step, Converged: true, Error: rate * change}
+				return Refinement{Steps: step, Converged: true, Size: largest, Error: rate * change}
 			}
 		}
 		before = change
 	}
-	return Refinement{Steps: refinementSteps, Error: before}
+	return Refinement{Steps: refinementSteps, Size: math.Inf(1), Error: before}
 }
 
 // settled reports whether every value has last changed by no more than a part of itself, or by next to nothing.
