@@ -67,8 +67,18 @@ func (e expression) factor() string {
 	return "(" + e.text() + ")"
 }
 
+// rounding is the share of a phasor below which one of its parts is nothing but the rounding of an angle.
+const rounding = 1e-12
+
 // number writes a real or complex figure with four significant digits.
 func number(value complex128) string {
+	re, im := math.Abs(real(value)), math.Abs(imag(value))
+	if re < rounding*im {
+		value = complex(0, imag(value))
+	}
+	if im < rounding*re {
+		value = complex(real(value), 0)
+	}
 	if imag(value) == 0 {
 		return figure(real(value))
 	}

@@ -152,9 +152,14 @@ func (g *plane) bends(a, b int) bool {
 	return ax*by != ay*bx
 }
 
-// sourceFirst lets a mesh begin with its first source.
+// sourceFirst lets a mesh begin with its first source, in the order of the parts.
 func (d *Drawing) sourceFirst(path []Step) []Step {
-	first := slices.IndexFunc(path, func(step Step) bool { return d.Delivers(step.Branch) })
+	first := -1
+	for i, step := range path {
+		if d.Delivers(step.Branch) && (first < 0 || step.Branch < path[first].Branch) {
+			first = i
+		}
+	}
 	if first <= 0 {
 		return path
 	}

@@ -30,15 +30,16 @@ type Branch struct {
 // Step is one branch of a mesh: Sense is 1 where the mesh runs from the branch's first pin to its second, else −1.
 type Step struct{ Branch, Sense int }
 
-// Mesh is a closed way along branches. A drawn mesh is a face of the drawing and runs clockwise. Any other is a loop,
-// which runs its first branch, in the order of branches, from the first pin to the second.
+// Mesh is a closed way along branches. A drawn mesh is a face of the drawing and runs clockwise; it begins with its first
+// source, in the order of the parts, or at its top left corner when it has none. Any other mesh is a loop. It begins with its
+// first source and runs through it the way it delivers, or with its first branch, from the first pin to the second.
 type Mesh struct {
-	Name    string // "m1", "m2" … in reading order, the drawn ones first
+	Name    string // "m1", "m2" … the drawn ones first, by their top left corners in reading order, then the loops
 	Drawn   bool
 	Path    []Step
 	Outline []stroke.Point // of a drawn mesh
 	Center  stroke.Point   // where a drawn mesh is widest, in grid steps
-	Radius  float64        // of the largest circle around Center within the outline, in grid steps
+	Radius  float64        // of the largest circle around Center that no line cuts, in grid steps
 }
 
 // Statement says what is not joined to what one would expect.
