@@ -193,9 +193,7 @@ func (l *layout) partGroup(i int, interactive bool) Group {
 // makeInteractive adds what a pointer, a key or a screen reader needs of a part.
 func (l *layout) makeInteractive(group *Group, i int) {
 	s := &l.symbols[i]
-	role := "group"
 	if s.part.Kind.Positions != nil {
-		role = "button"
 		group.Attributes = append(group.Attributes, Attribute{"data-operates", "true"},
 			Attribute{"data-positions", jsonList(s.part.Kind.Positions(s.part.Fill()))},
 			Attribute{"data-position", l.solved.Positions[s.part.Ref]})
@@ -204,7 +202,7 @@ func (l *layout) makeInteractive(group *Group, i int) {
 		group.Attributes = append(group.Attributes, Attribute{"data-principal", name}, Attribute{"data-value", value})
 	}
 	group.Attributes = append(group.Attributes,
-		Attribute{"tabindex", "0"}, Attribute{"role", role}, Attribute{"aria-label", s.spoken(l.readings[i])})
+		Attribute{"tabindex", "0"}, Attribute{"role", "group"}, Attribute{"aria-label", s.spoken(l.readings[i])})
 	hit := s.hit()
 	group.Hit = &hit
 	for _, pin := range s.part.Kind.Pins {

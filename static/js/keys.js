@@ -71,20 +71,26 @@ function enter(event) {
   if (event.shiftKey) enterCard(); else editInline(ref);
 }
 
-// A wire begins at the pencil point; with a part selected, at its pins in turn.
-let pinTurn = 0;
+// A wire begins at the pencil point or, with a part selected, at a pin of it: W again takes the next pin. Once the
+// pencil point has moved on, W does what a click does.
+let turnOf = null;
 function wireKey() {
   const [ref] = selectedParts();
-  if (wire.drawing()) { wire.click(cursor()); return; }
-  if (ref) {
-    const pins = [...partGroup(ref).querySelectorAll('[data-pin]')];
-    putCursor(pinPlace(pins[pinTurn++ % pins.length]));
-    select({});
+  if (wire.drawing() && !(turnOf && String(turnOf.at) === String(cursor()))) {
+    turnOf = null;
+    wire.click(cursor());
     return;
   }
-  pinTurn = 0;
-  wire.begin(cursor());
-  putCursor(cursor());
+  if (!ref) {
+    wire.begin(cursor());
+    putCursor(cursor());
+    return;
+  }
+  const pins = [...partGroup(ref).querySelectorAll('[data-pin]')];
+  const index = turnOf?.ref === ref && wire.drawing() ? (turnOf.index + 1) % pins.length : 0;
+  turnOf = { ref, index, at: pinPlace(pins[index]) };
+  wire.begin(turnOf.at);
+  putCursor(turnOf.at);
 }
 
 function escape() {

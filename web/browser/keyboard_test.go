@@ -35,37 +35,34 @@ func TestACircuitIsDrawnFromTheKeyboardAlone(t *testing.T) {
 	}
 	place("dc supply", 0, 2) // G1 at 12, 12: its pins are at 10 and 14
 	place("lamp", 8, 2)      // P1 at 20, 12
-	// W leads the pencil point to the next pin of the selected part, and then begins a wire there.
-	wire := func(part string, presses int, moves func()) {
+	focus := func(part string) {
+		t.Helper()
+		page.keys(kb.Escape)
+		page.keys(kb.Escape)
+		eval[bool](page, `document.activeElement.blur(), document.querySelector('[data-part="`+part+`"]').focus({focusVisible: true}), true`)
+		page.wait(`document.querySelector('.overlay .ticks')`)
+	}
+	// W begins a wire at the first pin of the selected part, W again at its second.
+	wire := func(part string, pin int) {
 		t.Helper()
 		before := eval[int](page, `document.querySelectorAll('#sheet [data-wire]').length`)
-		page.keys(kb.Escape)
-		page.keys(kb.Escape)
-		eval[bool](page, `document.querySelector('[data-part="`+part+`"]').focus({focusVisible: true}), true`)
-		page.wait(`document.querySelector('.overlay .ticks')`)
-		for range presses {
+		focus(part)
+		for range pin {
 			page.keys("w")
-			if presses > 1 {
-				eval[bool](page, `document.querySelector('[data-part="`+part+`"]').blur(), document.querySelector('[data-part="`+part+`"]').focus({focusVisible: true}), true`)
-			}
 		}
-		if presses > 1 {
-			page.keys(kb.Escape)
-		}
-		page.keys("w")
-		moves()
+		page.arrows(kb.ArrowRight, 8)
 		page.keys(kb.Enter)
 		page.wait(fmt.Sprintf(`document.querySelectorAll('#sheet [data-wire]').length === %d`, before+1))
 		page.settle()
 	}
-	wire("G1", 1, func() { page.arrows(kb.ArrowRight, 8) })
-	wire("G1", 2, func() { page.arrows(kb.ArrowRight, 8) })
+	wire("G1", 1)
+	wire("G1", 2)
 	page.wait(`Number(document.querySelector('[data-part="P1"]').dataset.current) !== 0`)
 	// 24 V across the 288 Ω of a 24 V 2 W lamp, by Ohm's law.
 	near(t, "the lamp's current", math.Abs(page.number(`[data-part="P1"]`, "data-current")), 24.0/288)
 
 	// The value is typed in place, as people write it.
-	eval[bool](page, `document.querySelector('[data-part="P1"]').focus({focusVisible: true}), true`)
+	focus("P1")
 	page.keys(kb.Enter)
 	page.wait(`!document.getElementById('inline').hidden`)
 	page.keys("12 V" + kb.Enter)

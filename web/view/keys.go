@@ -23,7 +23,7 @@ func Keys(editable bool) []KeyGroup {
 			{[]string{"Shift", "arrow"}, "five steps at once"},
 		}},
 		{"Wire", []KeyLine{
-			{[]string{"W"}, "with a part selected: pencil point to its next pin; else begin a wire, fix a corner, end on a pin"},
+			{[]string{"W"}, "begin a wire at the pencil point or at a pin of the selected part; again: its next pin"},
 			{[]string{"B"}, "bend the other way"},
 			{[]string{"Enter"}, "fix a corner, or end on a pin or wire"},
 			{[]string{"Shift Enter", "double click"}, "end the wire here"},
