@@ -112,7 +112,7 @@ function arrow(event) {
 }
 
 document.addEventListener('keydown', event => {
-  if (event.target.closest('input, select, textarea, dialog, .margin') && event.key !== 'Escape') return;
+  if (event.target.closest('dialog') || (event.target.closest('input, select, textarea, .margin') && event.key !== 'Escape')) return;
   const onButton = event.target.closest('button, summary, a');
   if (event.ctrlKey || event.metaKey) {
     run(withControl[event.key.toLowerCase()], event);
