@@ -1,8 +1,10 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 	"io"
+	"io/fs"
 	"os"
 	"strings"
 
@@ -18,6 +20,9 @@ func readSheet(s streams, name string) (*schematic.Sheet, error) {
 	}
 	sheet, err := schematic.Decode(data)
 	if err != nil {
+		if name == "-" {
+			name = "standard input"
+		}
 		return nil, fmt.Errorf("%s: %w", name, err)
 	}
 	return sheet, nil
@@ -28,10 +33,11 @@ func readFile(s streams, name string) ([]byte, error) {
 		return io.ReadAll(s.in)
 	}
 	data, err := os.ReadFile(name)
-	if err != nil {
-		return nil, fmt.Errorf("the sheet cannot be read: %w", err)
+	var why *fs.PathError
+	if errors.As(err, &why) {
+		return nil, fmt.Errorf("%s cannot be read: %w; name a sheet file, or - for standard input", name, why.Err)
 	}
-	return data, nil
+	return data, err
 }
 
 // findCase gives the index of a case that a person named.

@@ -4,6 +4,8 @@ import (
 	"bufio"
 	"context"
 	"encoding/json"
+	"errors"
+	"fmt"
 
 	"loopwright/schematic/cases"
 )
@@ -28,6 +30,9 @@ func (c *solveCommand) Run(ctx context.Context, s streams) error {
 		}
 	}
 	result, err := cases.Solve(ctx, sheet)
+	if errors.Is(err, context.Canceled) {
+		return errors.New("interrupted before the sheet was solved; nothing was written")
+	}
 	if err != nil {
 		return err
 	}
@@ -37,12 +42,25 @@ func (c *solveCommand) Run(ctx context.Context, s streams) error {
 	if err := c.write(s, result); err != nil {
 		return err
 	}
+	return c.unsolved(s, result)
+}
+
+// unsolved is the error of a result in which a case has no solution. Readings have no line for such a case, so that beside
+// them it is told apart.
+func (c *solveCommand) unsolved(s streams, result *cases.Result) error {
+	code := done
 	for i := range result.Cases {
-		if !result.Cases[i].Solved {
-			return &exit{code: unsolved}
+		if solved := &result.Cases[i]; !solved.Solved {
+			code = unsolved
+			if c.CSV {
+				fmt.Fprintf(s.err, "loopwright: case %s has no solution: %s\n", solved.Name, solved.Problem.Message)
+			}
 		}
 	}
-	return nil
+	if code == done {
+		return nil
+	}
+	return &exit{code: code}
 }
 
 func (c *solveCommand) write(s streams, result *cases.Result) error {
