@@ -34,7 +34,7 @@ func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solu
 // that could be real.
 const (
 	negligible = 0x1p-80
-	nothing    = 0x1p-86
+	nothing    = 0x1p-90
 )
 
 // zeroBelow is the magnitude below which values of a case are nothing but rounding.
@@ -50,19 +50,19 @@ func (s *meshSystem[T]) branch(b int, law *Law[T]) (j, u T) {
 		total += magnitude(s.x[m].Value)
 	}
 	j = orZero(s.current(b).Round(), max(negligible*total, s.zero))
-	u = s.voltage(b, law).Round()
-	if s.row[b] < 0 {
-		u = orZero(u, negligible*(magnitude(law.Gamma)+magnitude(law.Alpha)*total/s.ohms))
+	u = orZero(s.voltage(b, law).Round(), s.zero)
+	if s.row[b] < 0 && j == 0 {
+		u = law.Gamma
 	}
-	u = orZero(u, s.zero)
 	j = scaled(j, 1/s.ohms)
-	if len(law.Terms) == 0 {
-		if law.Beta == 0 {
-			j = law.Gamma / law.Alpha
-		}
-		if law.Alpha == 0 {
-			u = law.Gamma / law.Beta
-		}
+	if len(law.Terms) > 0 {
+		return j, u
+	}
+	if law.Beta == 0 {
+		j = law.Gamma / law.Alpha
+	}
+	if law.Alpha == 0 {
+		u = law.Gamma / law.Beta
 	}
 	return j, u
 }

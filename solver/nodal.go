@@ -16,24 +16,22 @@ import (
 // Currents stay unknowns of their own, since eliminating the current of a closed contact loses as many digits as its
 // resistance is smaller than that of its neighbours.
 type nodalSystem[T Scalar] struct {
-	network *Network[T]
-	slot    []int
-	matrix  *sparse.Matrix[T]
-	factor  *sparse.LU[T]
-	right   []T
-	x       []wide.Number[T]
-	current []T
-	zero    float64 // what is nothing but rounding, V
-	ground  []bool
+	network  *Network[T]
+	branches int
+	symbolic *sparse.Symbolic
+	slot     []int
+	matrix   *sparse.Matrix[T]
+	factor   *sparse.LU[T]
+	right    []T
+	x        []wide.Number[T]
+	current  []T
+	zero     float64 // what is nothing but rounding, V
+	ground   []bool
 }
 
 func newNodalSystem[T Scalar](ctx context.Context, n *Network[T], laws []Law[T]) (*nodalSystem[T], error) {
-	size := n.Nodes + len(laws)
-	s := &nodalSystem[T]{
-		network: n,
-		right:   make([]T, size), x: make([]wide.Number[T], size), ground: make([]bool, n.Nodes),
-		current: make([]T, len(laws)),
-	}
+	s := &nodalSystem[T]{network: n, branches: len(laws)}
+	s.allocate()
 	places := n.Nodes + 5*len(laws)
 	for b := range laws {
 		places += 3 * len(laws[b].Terms)
@@ -44,17 +42,33 @@ func newNodalSystem[T Scalar](ctx context.Context, n *Network[T], laws []Law[T])
 	})
 	// A node voltage has no coefficient in its current law before the current of a branch is eliminated, and the current of
 	// an ideal source none in its law before a node voltage is.
-	waiting := make([]bool, size)
+	waiting := make([]bool, n.Nodes+len(laws))
 	for k := range waiting {
 		waiting[k] = k < n.Nodes || laws[k-n.Nodes].Alpha == 0
 	}
-	pattern, slot := sparse.NewPattern(size, rows, columns)
+	pattern, slot := sparse.NewPattern(n.Nodes+len(laws), rows, columns)
 	symbolic, err := sparse.Analyze(ctx, pattern, waiting)
 	if err != nil {
 		return nil, err
 	}
-	s.slot, s.matrix, s.factor = slot, sparse.NewMatrix[T](pattern), sparse.NewLU[T](symbolic)
+	s.slot, s.symbolic = slot, symbolic
+	s.matrix, s.factor = sparse.NewMatrix[T](pattern), sparse.NewLU[T](symbolic)
 	return s, nil
+}
+
+// allocate gives the system memory of its own for all but the matrix.
+func (s *nodalSystem[T]) allocate() {
+	size := s.network.Nodes + s.branches
+	s.right, s.x = make([]T, size), make([]wide.Number[T], size)
+	s.ground, s.current = make([]bool, s.network.Nodes), make([]T, s.branches)
+}
+
+// fork is a system of the same layout with memory of its own.
+func (s *nodalSystem[T]) fork() *nodalSystem[T] {
+	fork := *s
+	fork.allocate()
+	fork.matrix, fork.factor = sparse.NewMatrix[T](s.symbolic.Pattern), sparse.NewLU[T](s.symbolic)
+	return &fork
 }
 
 // chooseGrounds marks the lowest node of each piece of the graph without independent current sources.

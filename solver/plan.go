@@ -74,6 +74,18 @@ func Prepare[T Scalar](ctx context.Context, n *Network[T]) (*Plan[T], error) {
 	return p, err
 }
 
+// Fork gives a plan for another goroutine. It shares what never changes, the analyses, and has its own memory.
+func (p *Plan[T]) Fork() *Plan[T] {
+	fork := &Plan[T]{network: p.network, through: p.through, terms: p.terms, walk: p.walk.fork(), compact: p.compact.fork()}
+	if p.full != nil {
+		fork.full = p.full.fork()
+	}
+	if p.nodal != nil {
+		fork.nodal = p.nodal.fork()
+	}
+	return fork
+}
+
 func termBranches[T Scalar](law *Law[T]) []int {
 	var branches []int
 	for _, term := range law.Terms {

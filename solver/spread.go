@@ -45,6 +45,15 @@ func newSpread[T Scalar](n *Network[T], branches []int) *spread[T] {
 	return s
 }
 
+// fork is a walk through the same branches with memory of its own.
+func (s *spread[T]) fork() *spread[T] {
+	fork := *s
+	nodes := s.network.Nodes
+	fork.step, fork.depth, fork.seen = make([]Step, nodes), make([]int, nodes), make([]int, nodes)
+	fork.reached, fork.stamp, fork.without = nil, 0, nil
+	return &fork
+}
+
 // touches reports whether any of the branches ends at the node.
 func (s *spread[T]) touches(node int) bool { return s.start[node] < s.start[node+1] }
 

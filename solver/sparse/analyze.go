@@ -21,7 +21,7 @@ func Analyze(ctx context.Context, p *Pattern, waiting []bool) (*Symbolic, error)
 		panic(errLength)
 	}
 	if p.N <= smallOrder {
-		return &Symbolic{Pattern: p, Order: orderSmall(p, waiting)}, ctx.Err()
+		return &Symbolic{Pattern: p, Order: orderSmall(p, waiting)}, nil
 	}
 	q := newSymmetricQuotient(p)
 	copy(q.waiting, waiting)
