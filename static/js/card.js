@@ -45,30 +45,44 @@ function hide() {
   leader.setAttribute('hidden', '');
 }
 
-// Beside the part, on the side that has more room and covers less of the drawing.
+// Where it covers least of the drawing, and not far from the part; it may lie on the desk beside the paper.
 function put(ref) {
   const group = partGroup(ref);
   if (!group) { hide(); return; }
   const scale = paper.clientWidth / sheet.viewBox.baseVal.width;
   const box = boxOf(group), width = callout.offsetWidth / scale, height = callout.offsetHeight / scale;
-  const view = sheet.viewBox.baseVal;
-  const top = Math.max(10, Math.min(view.height - height - 10, (box.top + box.bottom) / 2 - height / 3));
-  const sides = [box.right + 110, box.left - 110 - width, box.right + 180, box.left - 180 - width]
-    .map(left => Math.max(10, Math.min(view.width - width - 10, left)));
-  const lefts = sides.map(left => ({ left, cost: covered({ left, top, right: left + width, bottom: top + height }, ref) }));
-  const { left } = lefts.reduce((a, b) => (b.cost < a.cost ? b : a));
-  callout.style.left = left * scale + 'px';
-  callout.style.top = top * scale + 'px';
-  lead(box, { left, top, right: left + width, bottom: top + height }, group.getBBox());
+  const boxes = [...sheet.querySelectorAll('[data-part], [data-mesh], #title-block')].map(other => ({ own: other === group, box: other.getBBox() }));
+  let best = null;
+  for (const { left, top } of places(box, width, height, scale)) {
+    const area = { left, top, right: left + width, bottom: top + height };
+    const away = Math.hypot((left + width / 2) - (box.left + box.right) / 2, (top + height / 2) - (box.top + box.bottom) / 2);
+    const cost = away + covered(area, boxes);
+    if (!best || cost < best.cost) best = { cost, area };
+  }
+  callout.style.left = best.area.left * scale + 'px';
+  callout.style.top = best.area.top * scale + 'px';
+  lead(box, best.area, group.getBBox());
 }
 
-function covered(area, ref) {
+// Candidate places: columns to both sides of the part and at the edges, rows from top to bottom.
+function places(box, width, height, scale) {
+  const view = sheet.viewBox.baseVal, stage = paper.parentElement;
+  const most = Math.max(view.width - width - 10, (stage.clientWidth - paper.offsetLeft) / scale - width - 12);
+  const list = [];
+  for (const x of [box.right + 120, box.left - 120 - width, box.right + 200, box.left - 200 - width, view.width - width - 10, most, 10]) {
+    for (const y of [(box.top + box.bottom) / 2 - height / 3, 30, 120, view.height - height - 20]) {
+      list.push({ left: Math.max(10, Math.min(most, x)), top: Math.max(10, Math.min(view.height - height - 10, y)) });
+    }
+  }
+  return list;
+}
+
+function covered(area, boxes) {
   let cost = 0;
-  for (const group of sheet.querySelectorAll('[data-part]')) {
-    const box = group.getBBox();
+  for (const { own, box } of boxes) {
     const wide = Math.min(area.right, box.x + box.width) - Math.max(area.left, box.x);
     const high = Math.min(area.bottom, box.y + box.height) - Math.max(area.top, box.y);
-    if (wide > 0 && high > 0) cost += group.dataset.part === ref ? 100 * wide * high : wide * high;
+    if (wide > 0 && high > 0) cost += (own ? 20 : 1) * (200 + wide * high / 10);
   }
   return cost;
 }

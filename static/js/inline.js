@@ -23,8 +23,8 @@ export function editInline(part) {
   trouble.textContent = '';
   form.hidden = false;
   document.getElementById('callout').hidden = true;
-  input.focus();
-  input.select();
+  // The key that opened the field is still on its way, and not meant for it.
+  requestAnimationFrame(() => { input.focus(); input.select(); });
 }
 
 function close() {

@@ -1,5 +1,5 @@
 // The tray: parts are dragged from it onto the sheet, or put at the pencil point by a click or a key.
-import { nearest, overlay, placeOf, sheet, step, svg, userX, userY } from './grid.js';
+import { liesOn, nearest, overlay, placeOf, sheet, step, stretches, svg, userX, userY } from './grid.js';
 import { cursor } from './cursor.js';
 import { send } from './queue.js';
 import { select, partGroup } from './selection.js';
@@ -10,11 +10,19 @@ const ghost = svg('g', { class: 'ghost' });
 
 /** Puts a part at a place and selects it. */
 export async function place(entry, at) {
-  const part = { kind: entry.dataset.tray, at, values: JSON.parse(entry.dataset.values || '{}') };
+  const part = { kind: entry.dataset.tray, at, turn: turnAt(entry, at), values: JSON.parse(entry.dataset.values || '{}') };
   const answer = await send([{ do: 'add', part }]);
   if (!answer.ok) return;
   select({ parts: answer.made.refs });
   partGroup(answer.made.refs[0])?.focus({ preventScroll: true });
+}
+
+// A part with two pins that is dropped on a level wire lies level, so that it goes in series.
+function turnAt(entry, at) {
+  if (entry.dataset.reach !== '0,-2 0,2') return 0;
+  const onLevel = stretches().some(({ from, to }) => from[1] === to[1] && liesOn(at, { from, to }) &&
+    Math.min(Math.abs(from[0] - at[0]), Math.abs(to[0] - at[0])) >= 2);
+  return onLevel ? 270 : 0;
 }
 
 function pick(event) {
@@ -56,7 +64,7 @@ function showGhost(entry, at) {
     const [px, py] = pair.split(',').map(Number);
     return svg('circle', { cx: px * step, cy: py * step, r: 3 });
   }));
-  ghost.setAttribute('transform', `translate(${userX(at[0])} ${userY(at[1])})`);
+  ghost.setAttribute('transform', `translate(${userX(at[0])} ${userY(at[1])}) rotate(${turnAt(entry, at)})`);
 }
 
 function filter() {
