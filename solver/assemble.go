@@ -1,10 +1,6 @@
 package solver
 
-import (
-	"slices"
-
-	"loopwright/solver/sparse"
-)
+import "loopwright/solver/sparse"
 
 // solution turns the unknowns into currents and voltages.
 func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solution[T] {
@@ -13,7 +9,7 @@ func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solu
 		Mesh:    make([]T, len(n.Meshes)),
 		Current: make([]T, len(laws)), Voltage: make([]T, len(laws)), Node: make([]T, n.Nodes),
 		FloatingNode: make([]bool, n.Nodes), FloatingBranch: split.cut, Piece: split.of,
-		Laws: slices.Clone(laws),
+		Laws: laws,
 	}
 	for m := range solution.Mesh {
 		solution.Mesh[m] = scaled(orZero(s.x[m].Round(), s.zero), 1/s.ohms)
@@ -55,7 +51,7 @@ func (s *meshSystem[T]) branch(b int, law *Law[T]) (j, u T) {
 		u = law.Gamma
 	}
 	j = scaled(j, 1/s.ohms)
-	if len(law.Terms) > 0 {
+	if law.controlled() {
 		return j, u
 	}
 	if law.Beta == 0 {

@@ -5,17 +5,17 @@ import (
 	"time"
 )
 
-// Audit checks a solution of the plan's network under the given laws and fills in solution.Audit. The error is that of
-// ctx; a solution that is wrong is not an error but an audit that is not passed.
-func (p *Plan[T]) Audit(ctx context.Context, laws []Law[T], solution *Solution[T]) error {
+// Audit checks a solution that the plan has given, under the laws that it was solved with, and fills in solution.Audit. The
+// error is that of ctx; a solution that is wrong is not an error but an audit that is not passed.
+func (p *Plan[T]) Audit(ctx context.Context, solution *Solution[T]) error {
 	start := time.Now()
 	largest := largestOf(solution)
 	audit := Audit{
-		KCL:   ratio(p.currentGap(laws, solution, largest), largest.current),
-		KVL:   ratio(p.voltageGap(laws, solution), largest.voltage),
+		KCL:   ratio(p.currentGap(solution), largest.current),
+		KVL:   ratio(p.voltageGap(solution), largest.voltage),
 		Power: ratio(p.powerGap(solution), largest.power),
 	}
-	gap, err := p.nodalGap(ctx, laws, solution, largest)
+	gap, err := p.nodalGap(ctx, solution, largest)
 	if err != nil {
 		return err
 	}
@@ -56,14 +56,14 @@ func ratio(a, b float64) float64 {
 
 // beyondRounding is what is left of a sum when the rounding of its terms, whose magnitudes sum to total, is allowed for.
 func beyondRounding[T Scalar](sum T, total float64) float64 {
-	if gap := modulus(sum); gap > 4*epsilon*total {
+	if gap := modulus(sum); gap > 16*epsilon*total {
 		return gap
 	}
 	return 0
 }
 
 // currentGap is the largest sum of currents at a node.
-func (p *Plan[T]) currentGap(laws []Law[T], solution *Solution[T], largest extent) float64 {
+func (p *Plan[T]) currentGap(solution *Solution[T]) float64 {
 	sum := make([]T, p.network.Nodes)
 	total := make([]float64, p.network.Nodes)
 	for b, j := range solution.Current {
@@ -80,17 +80,18 @@ func (p *Plan[T]) currentGap(laws []Law[T], solution *Solution[T], largest exten
 	return gap
 }
 
-// voltageGap is the largest sum of voltages around a mesh.
-func (p *Plan[T]) voltageGap(laws []Law[T], solution *Solution[T]) float64 {
+// voltageGap is the largest sum of voltages around a mesh. Voltages are those that the branches' laws give for their
+// currents; only where a law sets the current is the voltage that of the solution.
+func (p *Plan[T]) voltageGap(solution *Solution[T]) float64 {
 	gap := 0.0
 	for _, mesh := range p.network.Meshes {
 		var sum T
 		total := 0.0
 		floating := false
 		for _, step := range mesh.Path {
-			u := solution.Voltage[step.Branch]
+			u, terms := lawVoltage(solution, step.Branch)
 			sum += signed(step.Sense, u)
-			total += magnitude(u)
+			total += terms
 			floating = floating || solution.FloatingBranch[step.Branch]
 		}
 		if !floating {
@@ -98,6 +99,22 @@ func (p *Plan[T]) voltageGap(laws []Law[T], solution *Solution[T]) float64 {
 		}
 	}
 	return gap
+}
+
+// lawVoltage gives the voltage of a branch by its law, and the sum of the magnitudes that it is made of.
+func lawVoltage[T Scalar](solution *Solution[T], b int) (u T, total float64) {
+	law := &solution.Laws[b]
+	if law.Beta == 0 {
+		return solution.Voltage[b], magnitude(solution.Voltage[b])
+	}
+	drop := law.Alpha * solution.Current[b]
+	u, total = law.Gamma-drop, magnitude(law.Gamma)+magnitude(drop)
+	for _, term := range law.Terms {
+		part := term.Alpha*solution.Current[term.Branch] + term.Beta*solution.Voltage[term.Branch]
+		u -= part
+		total += magnitude(part)
+	}
+	return u / law.Beta, total / magnitude(law.Beta)
 }
 
 // powerGap is the sum of all absorbed powers, which Tellegen's theorem says is zero.
@@ -113,15 +130,15 @@ func (p *Plan[T]) powerGap(solution *Solution[T]) float64 {
 }
 
 // nodalGap is the largest relative difference to the second method.
-func (p *Plan[T]) nodalGap(ctx context.Context, laws []Law[T], solution *Solution[T], largest extent) (float64, error) {
+func (p *Plan[T]) nodalGap(ctx context.Context, solution *Solution[T], largest extent) (float64, error) {
 	if p.nodal == nil {
-		nodal, err := newNodalSystem(ctx, p.network, laws)
+		nodal, err := newNodalSystem(ctx, p.network, solution.Laws)
 		if err != nil {
 			return 0, err
 		}
 		p.nodal = nodal
 	}
-	if solved, err := p.nodal.solve(ctx, laws); err != nil || !solved {
+	if solved, err := p.nodal.solve(ctx, solution.Laws); err != nil || !solved {
 		return 1, err
 	}
 	currents, voltages := 0.0, 0.0

@@ -46,7 +46,7 @@ func (g *cutGraph[T]) add() {
 }
 
 // source reports whether the branch sets its current without regard to others.
-func (g *cutGraph[T]) source(b int) bool { return g.laws[b].Beta == 0 && len(g.laws[b].Terms) == 0 }
+func (g *cutGraph[T]) source(b int) bool { return g.laws[b].Beta == 0 && !g.laws[b].controlled() }
 
 func (g *cutGraph[T]) current(b int) T { return g.laws[b].Gamma / g.laws[b].Alpha }
 

@@ -70,11 +70,21 @@ type Network[T Scalar] struct {
 // setsCurrent reports whether the law gives j and leaves u to the rest of the network.
 func (l *Law[T]) setsCurrent() bool { return l.Beta == 0 }
 
+// controlled reports whether the law depends on another branch.
+func (l *Law[T]) controlled() bool {
+	for _, term := range l.Terms {
+		if term.Alpha != 0 || term.Beta != 0 {
+			return true
+		}
+	}
+	return false
+}
+
 // open reports whether the law is j = 0.
-func (l *Law[T]) open() bool { return l.Beta == 0 && l.Gamma == 0 && len(l.Terms) == 0 }
+func (l *Law[T]) open() bool { return l.Beta == 0 && l.Gamma == 0 && !l.controlled() }
 
 // ideal reports whether the law gives u by itself, without any impedance.
-func (l *Law[T]) ideal() bool { return l.Alpha == 0 && len(l.Terms) == 0 }
+func (l *Law[T]) ideal() bool { return l.Alpha == 0 && !l.controlled() }
 
 // needsRow reports whether the law is not of the form u − Z·j = E, from which u follows without division.
 func (l *Law[T]) needsRow() bool { return l.Row || l.Beta != 1 || len(l.Terms) > 0 }

@@ -85,7 +85,7 @@ func (s *nodalSystem[T]) chooseGrounds(laws []Law[T]) {
 		return node
 	}
 	for b, law := range laws {
-		if law.Beta == 0 && len(law.Terms) == 0 {
+		if law.Beta == 0 && !law.controlled() {
 			continue
 		}
 		from, to := find(s.network.Branches[b].From), find(s.network.Branches[b].To)

@@ -113,13 +113,13 @@ func largeImpedance[T Scalar](laws []Law[T]) float64 {
 }
 
 // Solve solves the network with the given laws, one for each branch, and audits the solution. Laws must refer to the same
-// other branches as those that the plan was prepared with. Errors are as those of the function Solve.
+// other branches as those that the plan was prepared with, or to none. Errors are as those of the function Solve.
 func (p *Plan[T]) Solve(ctx context.Context, laws []Law[T]) (*Solution[T], error) {
 	solution, err := p.SolveUnaudited(ctx, laws)
 	if err != nil {
 		return nil, err
 	}
-	if err := p.Audit(ctx, laws, solution); err != nil {
+	if err := p.Audit(ctx, solution); err != nil {
 		return nil, err
 	}
 	return solution, nil
@@ -129,7 +129,8 @@ func (p *Plan[T]) Solve(ctx context.Context, laws []Law[T]) (*Solution[T], error
 func (p *Plan[T]) SolveUnaudited(ctx context.Context, laws []Law[T]) (*Solution[T], error) {
 	start := time.Now()
 	p.last = nil
-	if err := p.accept(laws); err != nil {
+	laws, err := p.accept(laws)
+	if err != nil {
 		return nil, err
 	}
 	split := findPieces(p.network, laws)
@@ -146,19 +147,27 @@ func (p *Plan[T]) SolveUnaudited(ctx context.Context, laws []Law[T]) (*Solution[
 	return solution, nil
 }
 
-func (p *Plan[T]) accept(laws []Law[T]) error {
+// accept checks laws, and fills in terms of zero where a controlled source has become something else.
+func (p *Plan[T]) accept(laws []Law[T]) ([]Law[T], error) {
 	if len(laws) != len(p.network.Branches) {
-		return fmt.Errorf("%d laws given for %d branches", len(laws), len(p.network.Branches))
+		return nil, fmt.Errorf("%d laws given for %d branches", len(laws), len(p.network.Branches))
 	}
 	if err := validateLaws(laws); err != nil {
-		return err
+		return nil, err
 	}
+	laws = slices.Clone(laws)
 	for b := range laws {
+		if len(laws[b].Terms) == 0 && len(p.terms[b]) > 0 {
+			laws[b].Terms = make([]Term[T], len(p.terms[b]))
+			for k, branch := range p.terms[b] {
+				laws[b].Terms[k].Branch = branch
+			}
+		}
 		if !slices.EqualFunc(laws[b].Terms, p.terms[b], func(t Term[T], branch int) bool { return t.Branch == branch }) {
-			return fmt.Errorf("the law of branch %d refers to other branches than when the network was prepared", b)
+			return nil, fmt.Errorf("the law of branch %d refers to other branches than when the network was prepared", b)
 		}
 	}
-	return nil
+	return laws, nil
 }
 
 // solveMeshes solves the mesh equations in the compact layout, or with a row for every branch where the compact layout

@@ -170,8 +170,7 @@ func controlled(random *rand.Rand, branches int) solver.Law[float64] {
 func readsFloating(n *solver.Network[float64]) bool {
 	for _, branch := range n.Branches {
 		for _, term := range branch.Law.Terms {
-			read := n.Branches[term.Branch].Law
-			if term.Beta != 0 && read.Beta == 0 && read.Gamma == 0 && len(read.Terms) == 0 {
+			if term.Beta != 0 && solvertest.Open(&n.Branches[term.Branch].Law) {
 				return true
 			}
 		}

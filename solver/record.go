@@ -224,7 +224,9 @@ func (r *record[T]) constraint(b int) (Equation[T], bool) {
 	if law.Alpha != 0 {
 		scale = 1 / law.Alpha
 	}
-	e.Right = signed(turn, law.Gamma*scale)
+	if law.Gamma != 0 {
+		e.Right = signed(turn, law.Gamma*scale)
+	}
 	if len(meshes) > 0 && law.Alpha != 0 {
 		e.Terms = append(e.Terms, EquationTerm[T]{Kind: Current, Branch: b, Of: b, Value: 1, Meshes: meshes})
 	}

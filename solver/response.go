@@ -169,7 +169,7 @@ const lostDigits = 1e-9
 // change joins or separates pieces of the network, leaves it without unique solution, or would lose too many digits: then
 // SolveUnaudited says what is the matter. The solution is not audited.
 func (p *Plan[T]) WithLaw(last *Solution[T], b int, law Law[T], response *Response[T]) (*Solution[T], bool) {
-	if p.last == nil || len(law.Terms) > 0 || p.split.cut[b] {
+	if p.last == nil || law.controlled() || p.split.cut[b] {
 		return nil, false
 	}
 	laws := slices.Clone(last.Laws)

@@ -12,7 +12,7 @@ func (p *Plan[T]) singular(s *meshSystem[T], laws []Law[T]) error {
 		return errors.New("the meshes are not independent: one of them is a combination of others")
 	}
 	for b := range laws {
-		if laws[b].setsCurrent() && len(laws[b].Terms) > 0 && p.bridge(b) {
+		if laws[b].setsCurrent() && laws[b].controlled() && p.bridge(b) {
 			return &Problem{Code: NoReturnPath, Branches: []int{b}, Open: newCutGraph(p.network, laws).wayBack(b)}
 		}
 	}
@@ -20,7 +20,7 @@ func (p *Plan[T]) singular(s *meshSystem[T], laws []Law[T]) error {
 	var controlled []int
 	for _, b := range s.undetermined() {
 		problem.Branches = append(problem.Branches, b)
-		if len(laws[b].Terms) > 0 {
+		if laws[b].controlled() {
 			controlled = append(controlled, b)
 		}
 	}

@@ -75,7 +75,7 @@ func validateLaws[T Scalar](laws []Law[T]) error {
 		if !finite(law.Alpha) || !finite(law.Beta) || !finite(law.Gamma) {
 			return fmt.Errorf("the law of branch %d has a value that is not finite", b)
 		}
-		if law.Alpha == 0 && law.Beta == 0 && len(law.Terms) == 0 {
+		if law.Alpha == 0 && law.Beta == 0 && !law.controlled() {
 			return fmt.Errorf("the law of branch %d says nothing about its current or voltage", b)
 		}
 		for _, term := range law.Terms {

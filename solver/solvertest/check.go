@@ -64,7 +64,7 @@ func lowestNodes[T solver.Scalar](n *solver.Network[T], laws []solver.Law[T]) []
 	for changed := true; changed; {
 		changed = false
 		for b, branch := range n.Branches {
-			if law := laws[b]; law.Beta == 0 && law.Gamma == 0 && len(law.Terms) == 0 {
+			if Open(&laws[b]) {
 				continue
 			}
 			least := min(lowest[branch.From], lowest[branch.To])
@@ -73,6 +73,16 @@ func lowestNodes[T solver.Scalar](n *solver.Network[T], laws []solver.Law[T]) []
 		}
 	}
 	return lowest
+}
+
+// Open reports whether a law sets a current of 0 A without regard to other branches.
+func Open[T solver.Scalar](law *solver.Law[T]) bool {
+	for _, term := range law.Terms {
+		if term.Alpha != 0 || term.Beta != 0 {
+			return false
+		}
+	}
+	return law.Beta == 0 && law.Gamma == 0
 }
 
 // floats checks that exactly what has no reference is marked, and stands as zero.
