@@ -7,6 +7,7 @@ async function show(method = 'GET', body = undefined) {
   const response = await fetch(`/s/${page.key}/share`, { method, body }).catch(() => null);
   const text = await response?.text();
   if (response?.headers.get('Content-Type')?.startsWith('text/html')) dialog.innerHTML = text;
+  for (const field of dialog.querySelectorAll('[data-copy]')) field.value = location.origin + field.value;
   if (!dialog.open) dialog.showModal();
 }
 
