@@ -3,11 +3,10 @@ package schematic
 import (
 	"errors"
 	"slices"
-	"strings"
 )
 
 // draft is a sheet while a batch of edits is made on it. It shares with the sheet that it began from whatever no edit
-// has touched: parts, wires and cases are replaced, never changed in place.
+// has touched: parts, wires and cases are replaced, their maps and lists never changed in place.
 type draft struct {
 	Sheet
 	made  Made
@@ -31,22 +30,25 @@ func Apply(sheet *Sheet, edits []Edit) (*Sheet, *Change, Made, error) {
 	}
 	after := d.Sheet
 	if err := Validate(&after); err != nil {
-		return nil, nil, Made{}, placed(err, d.place)
+		return nil, nil, Made{}, atPlace(err, d.place)
 	}
 	return &after, Compare(sheet, &after), d.made, nil
 }
 
-// placed says of an error that Validate found which edit brought it about; when there are several, the last.
-func placed(err error, place string) error {
-	var wrong *PlaceError
-	if !errors.As(err, &wrong) {
-		return err
+// atPlace gives a PlaceError another place, and other errors as they are.
+func atPlace(err error, place string) error {
+	if wrong := (*PlaceError)(nil); errors.As(err, &wrong) {
+		return &PlaceError{place, wrong.Message}
 	}
-	_, field, found := strings.Cut(wrong.Place, ".values.")
-	if found {
-		return &PlaceError{under(under(place, "values"), field), wrong.Message}
+	return err
+}
+
+// below puts the place of a PlaceError below another place.
+func below(err error, place string) error {
+	if wrong := (*PlaceError)(nil); errors.As(err, &wrong) {
+		return &PlaceError{under(place, wrong.Place), wrong.Message}
 	}
-	return &PlaceError{place, wrong.Message}
+	return err
 }
 
 func (d *draft) apply(edit *Edit) error {
@@ -94,46 +96,38 @@ func (d *draft) part(ref string) (*Part, error) {
 	if part := d.Part(ref); part != nil {
 		return part, nil
 	}
-	return nil, conflict("there is no part -%s on the sheet any more", ref)
+	return nil, goneFrom("part -", ref)
+}
+
+func goneFrom(what, name string) error {
+	return conflict("there is no %s%s on the sheet; somebody may have removed or renamed it", what, name)
 }
 
 // parts finds several parts and gives their indices, in the order of the sheet and each once.
 func (d *draft) parts(refs []string) ([]int, error) {
-	wanted := make(map[string]bool, len(refs))
-	for _, ref := range refs {
-		wanted[ref] = true
-	}
-	var found []int
-	for i := range d.Parts {
-		if wanted[d.Parts[i].Ref] {
-			found = append(found, i)
-			delete(wanted, d.Parts[i].Ref)
-		}
-	}
-	for _, ref := range refs {
-		if wanted[ref] {
-			return nil, conflict("there is no part -%s on the sheet any more", ref)
-		}
-	}
-	return found, nil
+	return find(len(d.Parts), func(i int) string { return d.Parts[i].Ref }, refs, "part -")
 }
 
 // wires finds several wires and gives their indices, in the order of the sheet and each once.
 func (d *draft) wires(ids []string) ([]int, error) {
-	wanted := make(map[string]bool, len(ids))
-	for _, id := range ids {
-		wanted[id] = true
+	return find(len(d.Wires), func(i int) string { return d.Wires[i].ID }, ids, "wire ")
+}
+
+func find(count int, name func(int) string, names []string, what string) ([]int, error) {
+	wanted := make(map[string]bool, len(names))
+	for _, each := range names {
+		wanted[each] = true
 	}
 	var found []int
-	for i := range d.Wires {
-		if wanted[d.Wires[i].ID] {
+	for i := range count {
+		if wanted[name(i)] {
 			found = append(found, i)
-			delete(wanted, d.Wires[i].ID)
+			delete(wanted, name(i))
 		}
 	}
-	for _, id := range ids {
-		if wanted[id] {
-			return nil, conflict("there is no wire %s on the sheet any more", id)
+	for _, each := range names {
+		if wanted[each] {
+			return nil, goneFrom(what, each)
 		}
 	}
 	return found, nil
@@ -141,13 +135,6 @@ func (d *draft) wires(ids []string) ([]int, error) {
 
 // dropJoints leaves out joints at which wires no longer cross.
 func (d *draft) dropJoints() {
-	if len(d.Joints) == 0 {
-		return
-	}
-	places := make(map[Point]bool, len(d.Joints))
-	for _, joint := range d.Joints {
-		places[joint] = true
-	}
-	level, upright := passes(&d.Sheet, places)
-	d.Joints = slices.DeleteFunc(d.Joints, func(p Point) bool { return !level[p] || !upright[p] })
+	crossed := crossedAt(d.Wires, d.Joints)
+	d.Joints = slices.DeleteFunc(d.Joints, func(p Point) bool { return !crossed[p] })
 }

@@ -11,40 +11,16 @@ func (d *draft) move(edit *Edit) error {
 	if err != nil {
 		return err
 	}
-	if len(parts)+len(wires) == 0 {
+	switch {
+	case len(parts)+len(wires) == 0:
 		return refuse(d.place, "name the parts or wires to move")
+	case edit.By == Point{}:
+		return nil
 	}
-	moved := make(map[int]Part, len(parts))
-	for _, i := range parts {
-		part := d.Parts[i]
-		part.At = part.At.moved(edit.By)
-		if err := checkReach(under(d.place, "by"), part.At); err != nil {
-			return err
-		}
-		moved[i] = part
-	}
-	c := newCarry(d, moved, wires, edit.By)
-	single := len(parts) == 1 && len(wires) == 0 && c.loose(parts[0])
-	c.run()
-	if single {
-		d.insertInSeries(parts[0])
-	}
-	d.noteJoins(c.before, parts)
-	return nil
+	return d.carry(parts, wires, func(p Point) Point { return p.shifted(edit.By) }, func(*Part) {})
 }
 
-// loose reports whether nothing is joined to any pin of a part.
-func (c *carry) loose(part int) bool {
-	for _, pin := range c.d.Parts[part].Kind.Pins {
-		u := c.uses[c.partPin(part, pin.Name)]
-		if u.stays || len(u.wires) > 0 {
-			return false
-		}
-	}
-	return true
-}
-
-// turn turns parts a quarter clockwise, or mirrors them: one about its own origin, several about their middle.
+// turn turns parts a quarter clockwise, or mirrors them left-right: one about its own origin, several about their middle.
 func (d *draft) turn(edit *Edit) error {
 	parts, err := d.parts(edit.Refs)
 	if err != nil {
@@ -53,34 +29,19 @@ func (d *draft) turn(edit *Edit) error {
 	if len(parts) == 0 {
 		return refuse(under(d.place, "refs"), "name the parts to %s", edit.Do)
 	}
-	center := d.Parts[parts[0]].At
-	if len(parts) > 1 {
-		center = d.middle(parts)
+	center := d.middle(parts)
+	if edit.Do == "flip" {
+		return d.carry(parts, nil,
+			func(p Point) Point { return Point{2*center.X - p.X, p.Y} },
+			func(part *Part) { part.Flip, part.Turn = !part.Flip, (360-part.Turn)%360 })
 	}
-	moved := make(map[int]Part, len(parts))
-	for _, i := range parts {
-		part := d.Parts[i]
-		out := offset(center, part.At)
-		if edit.Do == "flip" {
-			part.At = Point{center.X - out.X, center.Y + out.Y}
-			part.Flip = !part.Flip
-			part.Turn = (360 - part.Turn) % 360
-		} else {
-			part.At = Point{center.X - out.Y, center.Y + out.X}
-			part.Turn = (part.Turn + 90) % 360
-		}
-		if err := checkReach(d.place, part.At); err != nil {
-			return err
-		}
-		moved[i] = part
-	}
-	c := newCarry(d, moved, nil, Point{})
-	c.run()
-	d.noteJoins(c.before, parts)
-	return nil
+	return d.carry(parts, nil,
+		func(p Point) Point { return Point{center.X - (p.Y - center.Y), center.Y + (p.X - center.X)} },
+		func(part *Part) { part.Turn = (part.Turn + 90) % 360 })
 }
 
-// middle is the grid point in the middle of several parts.
+// middle is the middle of the origins of several parts when it lies on the grid; otherwise it is the origin that lies
+// nearest to it, so that four turns bring the parts back to where they were.
 func (d *draft) middle(parts []int) Point {
 	low, high := d.Parts[parts[0]].At, d.Parts[parts[0]].At
 	for _, i := range parts {
@@ -88,76 +49,93 @@ func (d *draft) middle(parts []int) Point {
 		low = Point{min(low.X, p.X), min(low.Y, p.Y)}
 		high = Point{max(high.X, p.X), max(high.Y, p.Y)}
 	}
-	return Point{(low.X + high.X) / 2, (low.Y + high.Y) / 2}
+	double := Point{low.X + high.X, low.Y + high.Y}
+	if double.X%2 == 0 && double.Y%2 == 0 {
+		return Point{double.X / 2, double.Y / 2}
+	}
+	far := func(i int) int {
+		p := d.Parts[i].At
+		return distance(Point{2 * p.X, 2 * p.Y}, double)
+	}
+	return d.Parts[slices.MinFunc(parts, func(a, b int) int { return far(a) - far(b) })].At
 }
 
-// insertInSeries cuts a wire when both pins of a part lie on one straight stretch of it with nothing between them, so
-// that the part lies in series.
-func (d *draft) insertInSeries(index int) {
-	part := &d.Parts[index]
-	if len(part.Kind.Pins) != 2 {
-		return
+// carry takes parts and wires to where goes says; face sets how a part faces there.
+func (d *draft) carry(parts, wires []int, goes func(Point) Point, face func(*Part)) error {
+	c := newCarry(d, parts, wires, goes)
+	for _, i := range parts {
+		part := &d.Parts[i]
+		part.At = goes(part.At)
+		face(part)
+		if err := checkReach(d.place, part.At); err != nil {
+			return err
+		}
 	}
-	a, b := part.Pin(part.Kind.Pins[0]), part.Pin(part.Kind.Pins[1])
+	was := make(map[string]int, len(d.Wires)) // the group of each wire before, by its name
 	for w := range d.Wires {
-		points := d.Wires[w].Points
-		for i := 1; i < len(points); i++ {
-			if !onSegment(a, points[i-1], points[i]) || !onSegment(b, points[i-1], points[i]) {
-				continue
-			}
-			if !d.clearBetween(index, w, a, b) {
+		was[d.Wires[w].ID] = c.before.Wires[w]
+	}
+	after := c.run()
+	if d.insertMoved(c.before, was, parts) {
+		after = Join(&d.Sheet)
+	}
+	d.noteJoins(c.before, after, was, parts)
+	return nil
+}
+
+// insertMoved puts each moved part in series that has come to lie on a wire which it was not joined to, and reports
+// whether there is one.
+func (d *draft) insertMoved(before *Joins, was map[string]int, parts []int) bool {
+	found := false
+	for _, i := range parts {
+		foreign := func(id string, a, b int) bool {
+			group, known := was[id]
+			first, second := before.Pins[i][a], before.Pins[i][b]
+			return known && first != second && group != first && group != second
+		}
+		found = d.insertInSeries(i, foreign) != nil || found
+	}
+	return found
+}
+
+// noteJoins puts down in words what is joined now and was not before some parts or wires moved: for each group that has
+// come about, one thing of each group before, of the moved parts if possible.
+func (d *draft) noteJoins(before, after *Joins, wires map[string]int, parts []int) {
+	type name struct {
+		group int // before
+		text  string
+	}
+	met := make([][]name, after.Groups)
+	note := func(was, is int, better bool, text func() string) {
+		for i := range met[is] {
+			if met[is][i].group == was {
+				if better {
+					met[is][i].text = text()
+				}
 				return
 			}
-			d.cut(w, i, a, b)
-			return
+		}
+		met[is] = append(met[is], name{was, text()})
+	}
+	for i, groups := range before.Pins {
+		moved := slices.Contains(parts, i)
+		for k, was := range groups {
+			note(was, after.Pins[i][k], moved, func() string { return d.pinName(i, k) })
 		}
 	}
-}
-
-// clearBetween reports whether no other part touches a wire between the two pins of a part, or at them, nothing else is
-// attached strictly between, and no other wire runs along there.
-func (d *draft) clearBetween(part, w int, a, b Point) bool {
-	inside := func(p Point) bool { return p != a && p != b && onSegment(p, a, b) }
-	for i := range d.Parts {
-		for _, pin := range d.Parts[i].Kind.Pins {
-			if i != part && onSegment(d.Parts[i].Pin(pin), a, b) {
-				return false
-			}
+	for w, is := range after.Wires {
+		if was, known := wires[d.Wires[w].ID]; known {
+			note(was, is, false, func() string { return "wire " + d.Wires[w].ID })
 		}
 	}
-	for k, wire := range d.Wires {
-		if k == w {
+	for _, names := range met {
+		if len(names) < 2 {
 			continue
 		}
-		for i, p := range wire.Points {
-			if inside(p) || (i > 0 && onSegment(a, wire.Points[i-1], p) && onSegment(b, wire.Points[i-1], p)) {
-				return false
-			}
+		texts := make([]string, len(names))
+		for i := range names {
+			texts[i] = names[i].text
 		}
+		d.made.Joined = append(d.made.Joined, inWords(texts)+" are joined now")
 	}
-	return !slices.ContainsFunc(d.Joints, inside)
-}
-
-// cut takes the stretch between two places out of segment i of a wire; what is left behind it becomes a new wire.
-func (d *draft) cut(w, i int, a, b Point) {
-	points := d.Wires[w].Points
-	if onSegment(b, points[i-1], a) {
-		a, b = b, a
-	}
-	head := straighten(append(slices.Clone(points[:i]), a))
-	tail := straighten(append([]Point{b}, points[i:]...))
-	switch {
-	case head != nil && tail != nil:
-		d.Wires[w].Points = head
-		wire := Wire{newWireNames(&d.Sheet)(), tail}
-		d.Wires = append(d.Wires, wire)
-		d.made.Wires = append(d.made.Wires, wire.ID)
-	case head != nil:
-		d.Wires[w].Points = head
-	case tail != nil:
-		d.Wires[w].Points = tail
-	default:
-		d.Wires = slices.Delete(d.Wires, w, w+1)
-	}
-	d.dropJoints()
 }

@@ -1,9 +1,7 @@
 package schematic
 
 import (
-	"errors"
 	"maps"
-	"slices"
 	"strconv"
 	"strings"
 
@@ -12,24 +10,37 @@ import (
 
 func (d *draft) add(edit *Edit) error {
 	part := *edit.Part
+	part.Values = maps.Clone(part.Values)
+	place := under(d.place, "part")
 	if part.Ref == "" {
 		part.Ref = d.freeRef(part.Kind.Letter)
 	}
-	if d.Part(part.Ref) != nil {
-		return conflict("the reference -%s is taken", part.Ref)
+	if err := checkRef(under(place, "ref"), part.Ref); err != nil {
+		return err
 	}
-	before := Join(&d.Sheet)
+	if d.Part(part.Ref) != nil {
+		return conflict("the reference -%s is taken; take another one", part.Ref)
+	}
+	if err := checkPart(place, &part, d.System); err != nil {
+		return err
+	}
+	part.dropDefaults()
 	d.Parts = append(d.Parts, part)
 	d.made.Refs = append(d.made.Refs, part.Ref)
-	d.insertInSeries(len(d.Parts) - 1)
-	d.noteJoins(before, []int{len(d.Parts) - 1})
+	index := len(d.Parts) - 1
+	anyWire := func(string, int, int) bool { return true }
+	d.noteTouching(index, d.insertInSeries(index, anyWire))
 	return nil
 }
 
 // freeRef is the letter with the lowest number that no part has yet.
 func (d *draft) freeRef(letter string) string {
+	taken := make(map[string]bool, len(d.Parts))
+	for i := range d.Parts {
+		taken[d.Parts[i].Ref] = true
+	}
 	for number := 1; ; number++ {
-		if ref := letter + strconv.Itoa(number); d.Part(ref) == nil {
+		if ref := letter + strconv.Itoa(number); !taken[ref] {
 			return ref
 		}
 	}
@@ -40,19 +51,32 @@ func (d *draft) set(edit *Edit) error {
 	if err != nil {
 		return err
 	}
+	changed := *part
+	if changed.Values, err = d.setValues(part, edit.Values); err != nil {
+		return err
+	}
+	if err := checkPart("", &changed, d.System); err != nil {
+		return below(err, d.place)
+	}
+	changed.dropDefaults()
+	*part = changed
+	d.keepPositions(part)
+	return nil
+}
+
+// setValues is a copy of the values of a part with some of them changed; null takes one back to its default.
+func (d *draft) setValues(part *Part, change any) (kinds.Values, error) {
 	place := under(d.place, "values")
-	members, ok := edit.Values.(object)
+	members, ok := change.(object)
 	if !ok {
-		return refuse(place, "write the values as an object in braces")
+		return nil, refuse(place, "write the values as an object in braces")
 	}
-	values := maps.Clone(part.Values)
-	if values == nil {
-		values = kinds.Values{}
-	}
+	values := make(kinds.Values, len(part.Values)+len(members))
+	maps.Copy(values, part.Values)
 	for _, m := range members {
 		spec, known := part.Kind.Spec(m.key)
 		if !known {
-			return refuse(under(place, m.key), "a %s has no value of this name", part.Kind.Title)
+			return nil, refuse(under(place, m.key), "a %s has no value of this name", part.Kind.Title)
 		}
 		if m.value == nil {
 			delete(values, m.key)
@@ -60,40 +84,21 @@ func (d *draft) set(edit *Edit) error {
 		}
 		value, err := spec.Read(m.value)
 		if err != nil {
-			return refuse(under(place, m.key), "%v", err)
+			return nil, refuse(under(place, m.key), "%v", err)
 		}
 		values[m.key] = value
 	}
-	changed := *part
-	changed.Values = values
-	if err := checkPart("", &changed, d.System); err != nil {
-		var wrong *PlaceError
-		errors.As(err, &wrong)
-		return refuse(under(d.place, wrong.Place), "%s", wrong.Message)
-	}
-	*part = changed
-	d.dropPositions(part)
-	return nil
+	return values, nil
 }
 
-// dropPositions puts a part back to rest in cases that name a position it no longer has.
-func (d *draft) dropPositions(part *Part) {
+// keepPositions puts a part whose values have changed back to rest in cases that name a position it no longer has.
+func (d *draft) keepPositions(part *Part) {
 	for i := range d.Cases {
 		position, named := d.Cases[i].Positions[part.Ref]
-		if named && (part.Kind.Positions == nil || !slices.Contains(part.Kind.Positions(part.Fill()), position)) {
+		if named && (position == part.rest() || checkPosition("", part, part.Ref, position) != nil) {
 			d.Cases[i].Positions = without(d.Cases[i].Positions, part.Ref)
 		}
 	}
-}
-
-// without is a copy of the names that lacks one of them.
-func without(names map[string]string, name string) map[string]string {
-	rest := maps.Clone(names)
-	delete(rest, name)
-	if len(rest) == 0 {
-		return nil
-	}
-	return rest
 }
 
 func (d *draft) rename(edit *Edit) error {
@@ -108,15 +113,13 @@ func (d *draft) rename(edit *Edit) error {
 		return err
 	}
 	if d.Part(edit.To) != nil {
-		return conflict("the reference -%s is taken", edit.To)
+		return conflict("the reference -%s is taken; take another one", edit.To)
 	}
 	part.Ref = edit.To
 	for i := range d.Cases {
-		if position, named := d.Cases[i].Positions[edit.Ref]; named {
-			d.Cases[i].Positions = maps.Clone(d.Cases[i].Positions)
-			delete(d.Cases[i].Positions, edit.Ref)
-			d.Cases[i].Positions[edit.To] = position
-		}
+		c := &d.Cases[i]
+		c.Positions = renamed(c.Positions, edit.Ref, edit.To)
+		c.Timers = renamed(c.Timers, edit.Ref, edit.To)
 	}
 	if pin, found := strings.CutPrefix(d.Reference, edit.Ref+":"); found {
 		d.Reference = edit.To + ":" + pin
@@ -124,27 +127,51 @@ func (d *draft) rename(edit *Edit) error {
 	return nil
 }
 
+// renamed is a copy of names in which one is called otherwise.
+func renamed(names map[string]string, from, to string) map[string]string {
+	text, named := names[from]
+	if !named {
+		return names
+	}
+	return with(without(names, from), to, text)
+}
+
+// remove takes parts and wires away. Wires that ended at a part stay; cases forget its positions.
 func (d *draft) remove(edit *Edit) error {
-	if len(edit.Refs)+len(edit.Wires) == 0 {
+	parts, err := d.parts(edit.Refs)
+	if err != nil {
+		return err
+	}
+	wires, err := d.wires(edit.Wires)
+	if err != nil {
+		return err
+	}
+	if len(parts)+len(wires) == 0 {
 		return refuse(d.place, "name the parts or wires to remove")
 	}
-	if _, err := d.parts(edit.Refs); err != nil {
-		return err
-	}
-	if _, err := d.wires(edit.Wires); err != nil {
-		return err
-	}
-	d.Parts = slices.DeleteFunc(d.Parts, func(part Part) bool { return slices.Contains(edit.Refs, part.Ref) })
-	d.Wires = slices.DeleteFunc(d.Wires, func(wire Wire) bool { return slices.Contains(edit.Wires, wire.ID) })
 	for i := range d.Cases {
-		for _, ref := range edit.Refs {
-			if _, named := d.Cases[i].Positions[ref]; named {
-				d.Cases[i].Positions = without(d.Cases[i].Positions, ref)
-			}
+		for _, part := range parts {
+			d.Cases[i].Positions = without(d.Cases[i].Positions, d.Parts[part].Ref)
+			d.Cases[i].Timers = without(d.Cases[i].Timers, d.Parts[part].Ref)
 		}
 	}
+	d.Parts = leaveOut(d.Parts, parts)
+	d.Wires = leaveOut(d.Wires, wires)
 	d.dropJoints()
 	return nil
+}
+
+// leaveOut removes the items at some indices, which ascend, in place.
+func leaveOut[T any](list []T, indices []int) []T {
+	kept := list[:0]
+	for i, item := range list {
+		if len(indices) > 0 && indices[0] == i {
+			indices = indices[1:]
+			continue
+		}
+		kept = append(kept, item)
+	}
+	return kept
 }
 
 func (d *draft) label(edit *Edit) error {
@@ -158,14 +185,20 @@ func (d *draft) label(edit *Edit) error {
 
 // head changes what stands in the title block and what the sheet is set to.
 func (d *draft) head(edit *Edit) error {
+	place := under(d.place, "set")
 	changed := d.Sheet
-	if err := readFields(edit.Set, under(d.place, "set"), "the sheet", headReaders(&changed)); err != nil {
+	if err := readFields(edit.Set, place, "the sheet", headReaders(&changed)); err != nil {
 		return err
 	}
 	if err := checkHead(&changed); err != nil {
-		var wrong *PlaceError
-		errors.As(err, &wrong)
-		return refuse(under(under(d.place, "set"), wrong.Place), "%s", wrong.Message)
+		return below(err, place)
+	}
+	if changed.System != d.System {
+		for i := range changed.Parts {
+			if err := checkPart("", &changed.Parts[i], changed.System); err != nil {
+				return atPlace(err, under(place, "system"))
+			}
+		}
 	}
 	d.Sheet = changed
 	return nil

@@ -32,40 +32,67 @@ func (d *draft) reroute(edit *Edit) error {
 }
 
 // chain checks the places of a wire that is to be drawn, straightens them, and refuses what is drawn already by wires
-// other than the one given.
+// other than the one with the given index.
 func (d *draft) chain(points []Point, but int) ([]Point, error) {
 	place := under(d.place, "points")
-	if err := checkChain(place, dropRepeats(points)); err != nil {
-		return nil, err
+	if len(points) < 2 {
+		return nil, refuse(place, "a wire needs at least two places")
+	}
+	for i, p := range points {
+		if err := checkReach(at(place, i), p); err != nil {
+			return nil, err
+		}
+		if i > 0 && p.X != points[i-1].X && p.Y != points[i-1].Y {
+			return nil, refuse(at(place, i), "the segment is neither horizontal nor vertical; put a corner between")
+		}
 	}
 	chain := straighten(points)
 	if chain == nil {
 		return nil, refuse(place, "the wire ends where it begins; draw it to another place")
 	}
-	others := d.Sheet
-	others.Parts, others.Joints = nil, nil
-	others.Wires = slices.Clone(d.Wires)
-	if but >= 0 {
-		others.Wires = slices.Delete(others.Wires, but, but+1)
-	}
-	others.Wires = append(others.Wires, Wire{"", chain})
-	for _, piece := range Join(&others).Pieces {
-		if piece.Wire == len(others.Wires)-1 {
+	for i := 1; i < len(chain); i++ {
+		if !d.covered(but, chain[i-1], chain[i]) {
 			return chain, nil
 		}
 	}
 	return nil, refuse(place, "this wire is drawn already")
 }
 
-// dropRepeats leaves out places that repeat the one before, as a hesitating hand gives them.
-func dropRepeats(points []Point) []Point { return slices.Compact(slices.Clone(points)) }
+// covered reports whether wires other than the one with the given index run along the whole of a straight stretch.
+func (d *draft) covered(but int, from, to Point) bool {
+	type span struct{ low, high int }
+	level := from.Y == to.Y
+	along := func(p Point) int {
+		if level {
+			return p.X
+		}
+		return p.Y
+	}
+	var spans []span
+	for w := range d.Wires {
+		for i := 1; w != but && i < len(d.Wires[w].Points); i++ {
+			a, b := d.Wires[w].Points[i-1], d.Wires[w].Points[i]
+			if inLine(a, b, from) && inLine(a, b, to) {
+				spans = append(spans, span{min(along(a), along(b)), max(along(a), along(b))})
+			}
+		}
+	}
+	slices.SortFunc(spans, func(a, b span) int { return a.low - b.low })
+	reached, end := min(along(from), along(to)), max(along(from), along(to))
+	for _, s := range spans {
+		if s.low <= reached {
+			reached = max(reached, s.high)
+		}
+	}
+	return reached >= end
+}
 
 func (d *draft) joint(edit *Edit) error {
 	if slices.Contains(d.Joints, *edit.At) {
 		return refuse(under(d.place, "at"), "the crossing is joined already")
 	}
 	if !slices.Contains(Join(&d.Sheet).Crossings, *edit.At) {
-		return refuse(under(d.place, "at"), "no wires cross here without being joined")
+		return refuse(under(d.place, "at"), "no wires cross here without being joined; put the joint on a crossing")
 	}
 	d.Joints = append(d.Joints, *edit.At)
 	return nil
@@ -74,47 +101,48 @@ func (d *draft) joint(edit *Edit) error {
 func (d *draft) removeJoint(edit *Edit) error {
 	i := slices.Index(d.Joints, *edit.At)
 	if i < 0 {
-		return conflict("there is no joint at %d, %d any more", edit.At.X, edit.At.Y)
+		return conflict("there is no joint at %d, %d; somebody may have removed it", edit.At.X, edit.At.Y)
 	}
 	d.Joints = slices.Delete(d.Joints, i, i+1)
 	return nil
 }
 
-// dropDoubles leaves out wires that are exactly like an earlier one.
-func (d *draft) dropDoubles() {
-	seen := make(map[string]bool, len(d.Wires))
-	d.Wires = slices.DeleteFunc(d.Wires, func(wire Wire) bool {
-		key := chainKey(wire.Points)
-		double := seen[key]
-		seen[key] = true
-		return double
-	})
-}
-
-// noteJoins puts down in words what is joined now and was not before, for the parts that were added or moved.
-func (d *draft) noteJoins(before *Joins, parts []int) {
-	after := Join(&d.Sheet)
-	was := map[int]map[int]string{} // group now → groups before, each with one pin of it
-	for i := range before.Pins {
-		for k, pin := range d.Parts[i].Kind.Pins {
-			now := after.Pins[i][k]
-			if was[now] == nil {
-				was[now] = map[int]string{}
-			}
-			if group := before.Pins[i][k]; was[now][group] == "" || slices.Contains(parts, i) {
-				was[now][group] = "-" + d.Parts[i].Ref + ":" + pin.Name
-			}
-		}
-	}
-	for now := range after.Groups {
-		if len(was[now]) < 2 {
+// noteTouching puts down in words what a new part touches with each of its pins, but for those that a wire was cut for.
+func (d *draft) noteTouching(index int, inSeries []int) {
+	part := &d.Parts[index]
+	for k := range part.Kind.Pins {
+		if slices.Contains(inSeries, k) {
 			continue
 		}
-		var names []string
-		for _, name := range was[now] {
-			names = append(names, name)
+		var touched []string
+		place := part.pin(k)
+		for i := range d.Parts {
+			for o := range d.Parts[i].Kind.Pins {
+				if i != index && d.Parts[i].pin(o) == place {
+					touched = append(touched, d.pinName(i, o))
+				}
+			}
 		}
-		slices.Sort(names)
-		d.made.Joined = append(d.made.Joined, fmt.Sprintf("%s are joined now", strings.Join(names, " and ")))
+		for _, wire := range d.Wires {
+			if leadsOver(wire.Points, place) {
+				touched = append(touched, "wire "+wire.ID)
+			}
+		}
+		if len(touched) > 0 {
+			d.made.Joined = append(d.made.Joined, fmt.Sprintf("%s now touches %s", d.pinName(index, k), inWords(touched)))
+		}
 	}
+}
+
+func (d *draft) pinName(part, pin int) string {
+	return "-" + d.Parts[part].Ref + ":" + d.Parts[part].Kind.Pins[pin].Name
+}
+
+// inWords lists names as a sentence does: "a, b and c".
+func inWords(names []string) string {
+	last := len(names) - 1
+	if last < 1 {
+		return strings.Join(names, "")
+	}
+	return strings.Join(names[:last], ", ") + " and " + names[last]
 }

@@ -2,23 +2,25 @@ package schematic
 
 import (
 	"bytes"
+	"fmt"
+	"maps"
 	"slices"
 )
 
-// Change is what a batch of edits did to a sheet: each part, wire and case that it touched, as it was before and as it
-// was after. A log of Changes gives every earlier sheet again, whatever later versions do with edits. The zero Change
-// changes nothing.
+// Change is what a batch of edits did to a sheet: each part, wire, joint, case and field of the title block that it
+// touched, as it was before and as it was after. A log of Changes gives every earlier sheet again, whatever later
+// versions do with edits. The zero Change changes nothing.
 type Change struct {
 	Parts  []Touched `json:"parts,omitempty"`
 	Wires  []Touched `json:"wires,omitempty"`
+	Joints []Touched `json:"joints,omitempty"` // named "x,y"
 	Cases  []Touched `json:"cases,omitempty"`
-	Head   *Touched  `json:"head,omitempty"` // the title block and settings
-	Joints *Touched  `json:"joints,omitempty"`
+	Head   []Touched `json:"head,omitempty"`  // fields of the title block and of the settings; From and To do not count
 	Order  *Touched  `json:"order,omitempty"` // the names of all cases, when those that stayed stand in another order
 }
 
 // Touched is one thing before and after a change, written as in a sheet file. Before is empty for what was added, After
-// for what was removed. The indices say where in its list it stood.
+// for what was removed. The indices say where in its list it stood, and are −1 where it did not.
 type Touched struct {
 	Name   string `json:"name,omitempty"`
 	From   int    `json:"from"`
@@ -29,27 +31,24 @@ type Touched struct {
 
 // Empty reports whether nothing was changed.
 func (c *Change) Empty() bool {
-	return len(c.Parts)+len(c.Wires)+len(c.Cases) == 0 && c.Head == nil && c.Joints == nil && c.Order == nil
+	return len(c.Parts)+len(c.Wires)+len(c.Joints)+len(c.Cases)+len(c.Head) == 0 && c.Order == nil
 }
 
 // Inverse is the change that takes this one back.
 func (c *Change) Inverse() *Change {
-	return &Change{invertAll(c.Parts), invertAll(c.Wires), invertAll(c.Cases), invert(c.Head), invert(c.Joints), invert(c.Order)}
-}
-
-func invertAll(list []Touched) []Touched {
-	var inverse []Touched
-	for i := range list {
-		inverse = append(inverse, *invert(&list[i]))
+	inverse := &Change{Parts: invert(c.Parts), Wires: invert(c.Wires), Joints: invert(c.Joints), Cases: invert(c.Cases), Head: invert(c.Head)}
+	if c.Order != nil {
+		inverse.Order = &invert([]Touched{*c.Order})[0]
 	}
 	return inverse
 }
 
-func invert(t *Touched) *Touched {
-	if t == nil {
-		return nil
+func invert(list []Touched) []Touched {
+	var inverse []Touched
+	for _, t := range list {
+		inverse = append(inverse, Touched{t.Name, t.To, t.From, t.After, t.Before})
 	}
-	return &Touched{t.Name, t.To, t.From, t.After, t.Before}
+	return inverse
 }
 
 // named says how the things of one list are named, written and compared.
@@ -57,7 +56,7 @@ type named[T any] struct {
 	name func(*T) string
 	text func([]byte, *T) []byte
 	read func(value any, place string) (T, error)
-	same func(a, b *T) bool // a quick test for things that no edit has touched; it may say no to equal ones
+	same func(a, b *T) bool // whether two things of one name are written alike
 }
 
 var (
@@ -69,34 +68,39 @@ var (
 		func(w *Wire) string { return w.ID }, appendWire, readWire,
 		func(a, b *Wire) bool { return slices.Equal(a.Points, b.Points) },
 	}
+	namedJoints = named[Point]{
+		func(p *Point) string { return fmt.Sprintf("%d,%d", p.X, p.Y) },
+		func(out []byte, p *Point) []byte { return appendPoint(out, *p) }, readPoint,
+		func(a, b *Point) bool { return *a == *b },
+	}
 	namedCases = named[Case]{
-		func(c *Case) string { return c.Name }, appendCase, readCase,
-		func(*Case, *Case) bool { return false },
+		func(c *Case) string { return c.Name }, appendCase, readCase, sameCase,
 	}
 )
 
 // Compare finds what changed from one sheet to another. A thing is the same when it has the same name; a renamed part
-// is one part removed and another added.
+// is one part removed and another added. Its cost is linear in the sheets, and what no edit has touched is not written.
 func Compare(before, after *Sheet) *Change {
 	c := &Change{
 		Parts:  compareLists(before.Parts, after.Parts, namedParts),
 		Wires:  compareLists(before.Wires, after.Wires, namedWires),
+		Joints: compareLists(before.Joints, after.Joints, namedJoints),
 		Cases:  compareLists(before.Cases, after.Cases, namedCases),
-		Head:   touchedText(appendHeadObject(before), appendHeadObject(after)),
-		Joints: touchedText(appendPoints(nil, before.Joints), appendPoints(nil, after.Joints)),
+	}
+	for _, row := range headRows() {
+		for _, name := range row {
+			was, is := headField(before, name), headField(after, name)
+			if !bytes.Equal(was, is) {
+				c.Head = append(c.Head, Touched{Name: name, Before: string(was), After: string(is)})
+			}
+		}
 	}
 	if reordered(before.Cases, after.Cases) {
-		c.Order = touchedText(appendTexts(nil, caseNames(before.Cases)), appendTexts(nil, caseNames(after.Cases)))
+		c.Order = &Touched{Before: string(appendTexts(nil, caseNames(before.Cases))), After: string(appendTexts(nil, caseNames(after.Cases)))}
 	}
 	return c
 }
 
-// appendHeadObject writes the title block and settings as an object of their own.
-func appendHeadObject(sheet *Sheet) []byte {
-	return append(appendHead([]byte{'{'}, sheet), '}')
-}
-
-// samePart is a quick test for parts that no edit has touched.
 func samePart(a, b *Part) bool {
 	if a.Ref != b.Ref || a.Kind != b.Kind || a.At != b.At || a.Turn != b.Turn || a.Flip != b.Flip || len(a.Values) != len(b.Values) {
 		return false
@@ -114,12 +118,18 @@ func samePart(a, b *Part) bool {
 }
 
 func compareLists[T any](old, now []T, how named[T]) []Touched {
-	at := make(map[string]int, len(old))
-	for i := range old {
+	same := func(i int) bool { return how.name(&old[i]) == how.name(&now[i]) && how.same(&old[i], &now[i]) }
+	// Most edits leave the beginning of each list as it was.
+	start := 0
+	for start < min(len(old), len(now)) && same(start) {
+		start++
+	}
+	at := make(map[string]int, len(old)-start)
+	for i := start; i < len(old); i++ {
 		at[how.name(&old[i])] = i
 	}
 	var list []Touched
-	for k := range now {
+	for k := start; k < len(now); k++ {
 		name := how.name(&now[k])
 		i, known := at[name]
 		delete(at, name)
@@ -127,13 +137,10 @@ func compareLists[T any](old, now []T, how named[T]) []Touched {
 		case !known:
 			list = append(list, Touched{Name: name, From: -1, To: k, After: string(how.text(nil, &now[k]))})
 		case !how.same(&old[i], &now[k]):
-			before, after := how.text(nil, &old[i]), how.text(nil, &now[k])
-			if !bytes.Equal(before, after) {
-				list = append(list, Touched{name, i, k, string(before), string(after)})
-			}
+			list = append(list, Touched{name, i, k, string(how.text(nil, &old[i])), string(how.text(nil, &now[k]))})
 		}
 	}
-	for i := range old {
+	for i := start; i < len(old); i++ {
 		name := how.name(&old[i])
 		if _, gone := at[name]; gone {
 			list = append(list, Touched{Name: name, From: i, To: -1, Before: string(how.text(nil, &old[i]))})
@@ -142,11 +149,8 @@ func compareLists[T any](old, now []T, how named[T]) []Touched {
 	return list
 }
 
-func touchedText(before, after []byte) *Touched {
-	if bytes.Equal(before, after) {
-		return nil
-	}
-	return &Touched{Before: string(before), After: string(after)}
+func sameCase(a, b *Case) bool {
+	return a.Follows == b.Follows && a.Supply == b.Supply && maps.Equal(a.Positions, b.Positions) && maps.Equal(a.Timers, b.Timers)
 }
 
 func caseNames(cases []Case) []string {
@@ -159,8 +163,6 @@ func caseNames(cases []Case) []string {
 
 // reordered reports whether the cases that are in both lists stand in another order.
 func reordered(before, after []Case) bool {
-	a, b := caseNames(before), caseNames(after)
-	a = slices.DeleteFunc(a, func(name string) bool { return !slices.Contains(b, name) })
-	b = slices.DeleteFunc(b, func(name string) bool { return !slices.Contains(a, name) })
-	return !slices.Equal(a, b)
+	was, is := caseNames(before), caseNames(after)
+	return !slices.Equal(withoutOthers(was, is), withoutOthers(is, was))
 }

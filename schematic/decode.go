@@ -7,7 +7,8 @@ import (
 )
 
 // Decode reads a sheet file. What it cannot understand it refuses with a *PlaceError that says where; text that is no
-// JSON at all gives a *SyntaxError. A sheet that it returns passes Validate.
+// JSON at all gives a *SyntaxError, which is a PlaceError too. A sheet that it returns passes Validate, names all its
+// wires, and holds no value and no position that says no more than the default. Its cost is linear in the file.
 func Decode(data []byte) (*Sheet, error) {
 	tree, err := parse(data)
 	if err != nil {
@@ -24,7 +25,23 @@ func Decode(data []byte) (*Sheet, error) {
 	if err := Validate(sheet); err != nil {
 		return nil, err
 	}
+	for i := range sheet.Parts {
+		sheet.Parts[i].dropDefaults()
+	}
+	parts := sheet.byRef()
+	for i := range sheet.Cases {
+		sheet.Cases[i] = sheet.Cases[i].withoutRest(parts)
+	}
 	return sheet, nil
+}
+
+// dropDefaults leaves out the values that say no more than the default.
+func (p *Part) dropDefaults() {
+	for _, spec := range p.Kind.Specs {
+		if value, given := p.Values[spec.Name]; given && !spec.Required && !spec.Optional && value.Same(spec.Default) {
+			delete(p.Values, spec.Name)
+		}
+	}
 }
 
 // restCase is the name of the case that every sheet without cases has.
@@ -133,19 +150,7 @@ func readPart(value any, place string, needsRef bool) (Part, error) {
 	}
 	err := readFields(value, place, "a part", readers{
 		"ref": intoText(&part.Ref), "kind": intoText(&kindName), "at": intoPoint(&part.At),
-		"turn": func(value any, place string) error {
-			turn, err := readWhole(value, place)
-			part.Turn = turn
-			return err
-		},
-		"flip": func(value any, place string) error {
-			flip, ok := value.(bool)
-			part.Flip = flip
-			if !ok {
-				return refuse(place, "write true or false")
-			}
-			return nil
-		},
+		"turn": readTurn(&part.Turn), "flip": intoFlag(&part.Flip),
 		"label": func(value any, place string) error {
 			part.Label = new(Point)
 			return intoPoint(part.Label)(value, place)
@@ -157,6 +162,19 @@ func readPart(value any, place string, needsRef bool) (Part, error) {
 	})
 	return part, err
 }
+
+func readTurn(target *int) reader {
+	return func(value any, place string) error {
+		turn, ok := value.(float64)
+		if !ok || !isTurn(int(turn)) || turn != float64(int(turn)) {
+			return refuse(place, "write 0, 90, 180 or 270, clockwise as seen on the sheet")
+		}
+		*target = int(turn)
+		return nil
+	}
+}
+
+func isTurn(turn int) bool { return turn == 0 || turn == 90 || turn == 180 || turn == 270 }
 
 func readValues(value any, place string, kind *kinds.Kind) (kinds.Values, error) {
 	values := kinds.Values{}
@@ -201,28 +219,6 @@ func readCase(value any, place string) (Case, error) {
 		err = refuse(under(place, "follows"), "name a case, or leave the field out")
 	}
 	return c, err
-}
-
-// intoNames reads an object whose fields are references and whose values are texts.
-func intoNames(target *map[string]string) func(any, string) error {
-	return func(value any, place string) error {
-		members, ok := value.(object)
-		if !ok {
-			return refuse(place, "write it as an object in braces")
-		}
-		names := make(map[string]string, len(members))
-		for _, m := range members {
-			var text string
-			if err := intoText(&text)(m.value, under(place, m.key)); err != nil {
-				return err
-			}
-			names[m.key] = text
-		}
-		if len(names) > 0 {
-			*target = names
-		}
-		return nil
-	}
 }
 
 // nameWires gives w1, w2 … to wires without a name, leaving out names that are taken.

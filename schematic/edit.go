@@ -19,6 +19,7 @@ type Edit struct {
 	Points []Point  // wire, reroute
 	At     *Point   // joint, remove-joint, label; nil gives a label back to the placer
 	Case   *Case    // case
+	After  string   // case: the case that it is to stand behind; empty leaves it in its place, or puts a new one last
 	Name   string   // rename-case, remove-case, and the case of operate
 	Names  []string // order-cases
 	// Position is where operate puts a part.
@@ -75,7 +76,7 @@ var editFields = map[string]struct{ needed, optional []string }{
 	"joint":        {[]string{"at"}, nil},
 	"remove-joint": {[]string{"at"}, nil},
 	"label":        {[]string{"ref"}, []string{"at"}},
-	"case":         {[]string{"case"}, nil},
+	"case":         {[]string{"case"}, []string{"after"}},
 	"operate":      {[]string{"case", "ref", "position"}, nil},
 	"rename-case":  {[]string{"name", "to"}, nil},
 	"order-cases":  {[]string{"names"}, nil},
@@ -117,13 +118,13 @@ func readEdit(item any, place string) (Edit, error) {
 }
 
 func (e *Edit) readers() readers {
-	keep := func(target *any) func(any, string) error {
+	keep := func(target *any) reader {
 		return func(value any, _ string) error { *target = value; return nil }
 	}
 	return readers{
 		"do": intoText(&e.Do), "refs": intoTexts(&e.Refs), "wires": intoTexts(&e.Wires), "by": intoPoint(&e.By),
 		"ref": intoText(&e.Ref), "to": intoText(&e.To), "values": keep(&e.Values), "wire": intoText(&e.Wire),
-		"points": intoPoints(&e.Points), "name": intoText(&e.Name), "names": intoTexts(&e.Names),
+		"points": intoPoints(&e.Points), "name": intoText(&e.Name), "names": intoTexts(&e.Names), "after": intoText(&e.After),
 		"position": intoText(&e.Position), "set": keep(&e.Set),
 		"at": func(value any, place string) error {
 			e.At = new(Point)

@@ -1,9 +1,12 @@
 package schematic
 
 import (
-	"bytes"
 	"encoding/json"
+	"maps"
+	"slices"
 	"strconv"
+
+	"github.com/go-json-experiment/json/jsontext"
 
 	"loopwright/schematic/kinds"
 )
@@ -13,7 +16,6 @@ import (
 func Encode(sheet *Sheet) []byte {
 	out := []byte("{\n  \"format\": ")
 	out = appendText(out, Format)
-	out = append(out, ",\n  "...)
 	out = appendHead(out, sheet)
 	out = appendLines(out, "parts", len(sheet.Parts), func(out []byte, i int) []byte { return appendPart(out, &sheet.Parts[i]) })
 	out = appendLines(out, "wires", len(sheet.Wires), func(out []byte, i int) []byte { return appendWire(out, &sheet.Wires[i]) })
@@ -36,34 +38,64 @@ func plainCases(cases []Case) bool {
 	return c.Name == restCase && c.Supply == kinds.Nominal && c.Follows == "" && len(c.Positions) == 0 && len(c.Timers) == 0
 }
 
+// headRows lists the fields of the title block and of the settings, as they stand in the rows of a file.
+func headRows() [][]string {
+	return [][]string{{"title", "number", "owner", "author"}, {"system"}, {"symbols", "size", "reference"}}
+}
+
 func appendHead(out []byte, sheet *Sheet) []byte {
-	named := false
-	for _, field := range []struct{ name, text string }{
-		{"title", sheet.Title}, {"number", sheet.Number}, {"owner", sheet.Owner}, {"author", sheet.Author},
-	} {
-		if field.text != "" {
-			out = append(appendText(appendKey(out, field.name), field.text), ", "...)
-			named = true
+	for _, row := range headRows() {
+		begun := false
+		for _, name := range row {
+			text := headField(sheet, name)
+			if text == nil {
+				continue
+			}
+			if begun {
+				out = append(out, ", "...)
+			} else {
+				out = append(out, ",\n  "...)
+			}
+			out = append(appendKey(out, name), text...)
+			begun = true
 		}
 	}
-	if named {
-		out = append(bytes.TrimRight(out, " "), "\n  "...)
-	}
-	out = append(out, "\"system\": {\"kind\": "...)
-	out = appendText(out, sheet.System.Kind)
-	if sheet.System.AC() {
-		out = append(out, ", \"hz\": "...)
-		out = appendNumber(out, sheet.System.Hertz)
-	}
-	out = append(out, "}, \"symbols\": "...)
-	out = appendText(out, string(sheet.Symbols))
-	out = append(out, ", \"size\": "...)
-	out = appendText(out, sheet.Size)
-	if sheet.Reference != "" {
-		out = append(out, ", \"reference\": "...)
-		out = appendText(out, sheet.Reference)
-	}
 	return out
+}
+
+// headField writes one field of the title block or of the settings; nil when it is left out.
+func headField(sheet *Sheet, name string) []byte {
+	text := ""
+	switch name {
+	case "title":
+		text = sheet.Title
+	case "number":
+		text = sheet.Number
+	case "owner":
+		text = sheet.Owner
+	case "author":
+		text = sheet.Author
+	case "symbols":
+		text = string(sheet.Symbols)
+	case "size":
+		text = sheet.Size
+	case "reference":
+		text = sheet.Reference
+	case "system":
+		return appendSystem(nil, sheet.System)
+	}
+	if text == "" {
+		return nil
+	}
+	return appendText(nil, text)
+}
+
+func appendSystem(out []byte, system kinds.System) []byte {
+	out = appendText(append(out, `{"kind": `...), system.Kind)
+	if system.AC() {
+		out = appendNumber(append(out, `, "hz": `...), system.Hertz)
+	}
+	return append(out, '}')
 }
 
 // appendLines writes a list with one item a line.
@@ -138,11 +170,11 @@ func appendCase(out []byte, c *Case) []byte {
 		out = append(out, `, "follows": `...)
 		out = appendText(out, c.Follows)
 	}
+	out = appendNames(out, "positions", c.Positions)
 	if c.Supply != kinds.Nominal {
 		out = append(out, `, "supply": `...)
 		out = appendText(out, string(c.Supply))
 	}
-	out = appendNames(out, "positions", c.Positions)
 	out = appendNames(out, "timers", c.Timers)
 	return append(out, '}')
 }
@@ -152,7 +184,7 @@ func appendNames(out []byte, name string, names map[string]string) []byte {
 		return out
 	}
 	out = append(appendKey(append(out, ", "...), name), '{')
-	for i, key := range sortedKeys(names) {
+	for i, key := range slices.Sorted(maps.Keys(names)) {
 		if i > 0 {
 			out = append(out, ", "...)
 		}
@@ -188,15 +220,11 @@ func appendNumber(out []byte, number float64) []byte {
 	return append(out, data...)
 }
 
-// appendText writes a text as JSON, without the escapes that only HTML needs.
+// appendText writes a text as JSON with no more escapes than it needs. Text on a sheet is UTF-8; in any other, what
+// cannot be read is replaced.
 func appendText(out []byte, text string) []byte {
-	var line bytes.Buffer
-	encoder := json.NewEncoder(&line)
-	encoder.SetEscapeHTML(false)
-	if err := encoder.Encode(text); err != nil {
-		return append(out, `""`...) // text on a sheet is UTF-8
-	}
-	return append(out, bytes.TrimSuffix(line.Bytes(), []byte("\n"))...)
+	out, _ = jsontext.AppendQuote(out, text)
+	return out
 }
 
 // appendTexts writes a list of texts.

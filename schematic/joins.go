@@ -28,6 +28,7 @@ type Joins struct {
 	Crossings []Point       // where pieces cross without joining, in reading order
 
 	along   [][]int // the places on each wire, as indices, in the direction of drawing
+	groups  []int   // the group of each place
 	columns []int   // the places by x, then by y, as indices
 	column  []int   // where each place stands in columns
 	right   []bool  // whether a piece leads from each place to the next one on its row
@@ -173,6 +174,10 @@ func (j *Joins) group(sheet *Sheet) {
 	j.Wires = make([]int, len(sheet.Wires))
 	for w, places := range j.along {
 		j.Wires[w] = of(places[0])
+	}
+	j.groups = make([]int, len(j.Places))
+	for i := range j.Places {
+		j.groups[i] = of(i)
 	}
 }
 

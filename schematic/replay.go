@@ -6,27 +6,20 @@ import (
 )
 
 // Replay makes a change again, on the sheet that it was made on or on a later one. It is a *ConflictError when
-// something that the change touches is not as it was before the change.
+// something that the change touches is not as it was before the change. The sheet that it is given stays as it is.
 func Replay(sheet *Sheet, change *Change) (*Sheet, error) {
 	after := *sheet
-	var err error
-	if after.Parts, err = replayList(sheet.Parts, change.Parts, namedParts, "part -"); err != nil {
-		return nil, err
-	}
-	if after.Wires, err = replayList(sheet.Wires, change.Wires, namedWires, "wire "); err != nil {
-		return nil, err
-	}
-	if after.Cases, err = replayList(sheet.Cases, change.Cases, namedCases, "case "); err != nil {
-		return nil, err
-	}
-	if err := replayHead(&after, change.Head); err != nil {
-		return nil, err
-	}
-	if err := replayJoints(&after, change.Joints); err != nil {
-		return nil, err
-	}
-	if err := replayOrder(&after, change.Order); err != nil {
-		return nil, err
+	var failed [6]error
+	after.Parts, failed[0] = replayList(sheet.Parts, change.Parts, namedParts, "part -")
+	after.Wires, failed[1] = replayList(sheet.Wires, change.Wires, namedWires, "wire ")
+	after.Joints, failed[2] = replayList(sheet.Joints, change.Joints, namedJoints, "joint at ")
+	after.Cases, failed[3] = replayList(sheet.Cases, change.Cases, namedCases, "case ")
+	failed[4] = replayHead(&after, change.Head)
+	failed[5] = replayOrder(&after, sheet.Cases, change.Order)
+	for _, err := range failed {
+		if err != nil {
+			return nil, err
+		}
 	}
 	if err := Validate(&after); err != nil {
 		return nil, conflict("the sheet has changed since, so that this no longer fits: %v", err)
@@ -43,7 +36,7 @@ func replayList[T any](items []T, touched []Touched, how named[T], what string) 
 	for i := range list {
 		at[how.name(&list[i])] = i
 	}
-	gone := map[int]bool{}
+	var gone []int
 	var added []Touched
 	for _, t := range touched {
 		i, present := at[t.Name]
@@ -58,7 +51,7 @@ func replayList[T any](items []T, touched []Touched, how named[T], what string) 
 		case string(how.text(nil, &list[i])) != t.Before:
 			return nil, conflict("%s%s has changed since", what, t.Name)
 		case t.After == "":
-			gone[i] = true
+			gone = append(gone, i)
 			continue
 		}
 		item, err := readText(t.After, how.read)
@@ -67,17 +60,8 @@ func replayList[T any](items []T, touched []Touched, how named[T], what string) 
 		}
 		list[i] = item
 	}
-	return insertAll(removeAll(list, gone), added, how)
-}
-
-func removeAll[T any](list []T, gone map[int]bool) []T {
-	kept := list[:0]
-	for i, item := range list {
-		if !gone[i] {
-			kept = append(kept, item)
-		}
-	}
-	return kept
+	slices.Sort(gone)
+	return insertAll(leaveOut(list, gone), added, how)
 }
 
 func insertAll[T any](list []T, added []Touched, how named[T]) ([]T, error) {
@@ -102,50 +86,64 @@ func readText[T any](text string, read func(any, string) (T, error)) (T, error) 
 	return read(tree, "")
 }
 
-func replayHead(sheet *Sheet, head *Touched) error {
-	if head == nil {
-		return nil
+func replayHead(sheet *Sheet, touched []Touched) error {
+	fields := headReaders(sheet)
+	for _, t := range touched {
+		read, known := fields[t.Name]
+		switch {
+		case !known:
+			return conflict("this version knows no field %q of a sheet", t.Name)
+		case string(headField(sheet, t.Name)) != t.Before:
+			return conflict("the field %q of the sheet has changed since", t.Name)
+		}
+		text := t.After
+		if text == "" {
+			text = `""`
+		}
+		tree, err := parse([]byte(text))
+		if err != nil {
+			return err
+		}
+		if err := read(tree, t.Name); err != nil {
+			return err
+		}
 	}
-	if string(appendHeadObject(sheet)) != head.Before {
-		return conflict("the title block or the settings have changed since")
-	}
-	tree, err := parse([]byte(head.After))
-	if err != nil {
-		return err
-	}
-	sheet.Title, sheet.Number, sheet.Owner, sheet.Author, sheet.Reference = "", "", "", "", ""
-	return readFields(tree, "", "the sheet", headReaders(sheet))
+	return nil
 }
 
-func replayJoints(sheet *Sheet, joints *Touched) error {
-	if joints == nil {
-		return nil
-	}
-	if string(appendPoints(nil, sheet.Joints)) != joints.Before {
-		return conflict("the joints have changed since")
-	}
-	points, err := readText(joints.After, func(value any, place string) (points []Point, err error) {
-		err = intoPoints(&points)(value, place)
-		return points, err
-	})
-	sheet.Joints = points
-	return err
-}
-
-func replayOrder(sheet *Sheet, order *Touched) error {
+// replayOrder puts the cases in order. Cases that the change does not know stay behind the others.
+func replayOrder(sheet *Sheet, before []Case, order *Touched) error {
 	if order == nil {
 		return nil
 	}
-	names, err := readText(order.After, func(value any, place string) (names []string, err error) {
-		err = intoTexts(&names)(value, place)
-		return names, err
-	})
+	was, err := readText(order.Before, readTexts)
 	if err != nil {
 		return err
 	}
+	names, err := readText(order.After, readTexts)
+	if err != nil {
+		return err
+	}
+	if common := withoutOthers(caseNames(before), was); !slices.Equal(common, withoutOthers(was, common)) {
+		return conflict("the order of the cases has changed since")
+	}
+	rank := func(c Case) int {
+		if i := slices.Index(names, c.Name); i >= 0 {
+			return i
+		}
+		return len(names)
+	}
 	sheet.Cases = slices.Clone(sheet.Cases)
-	slices.SortStableFunc(sheet.Cases, func(a, b Case) int {
-		return cmp.Compare(slices.Index(names, a.Name), slices.Index(names, b.Name))
-	})
+	slices.SortStableFunc(sheet.Cases, func(a, b Case) int { return cmp.Compare(rank(a), rank(b)) })
 	return nil
+}
+
+func readTexts(value any, place string) (texts []string, err error) {
+	err = intoTexts(&texts)(value, place)
+	return texts, err
+}
+
+// withoutOthers is a list of names without those that are not in another list.
+func withoutOthers(names, others []string) []string {
+	return slices.DeleteFunc(slices.Clone(names), func(name string) bool { return !slices.Contains(others, name) })
 }

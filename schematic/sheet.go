@@ -21,6 +21,7 @@ type Sheet struct {
 	Symbols                      kinds.SymbolSet
 	Size                         string // "A4" … "A1", "A" … "D"
 	// Reference names the potential of 0 V: a potential's name, a "REF:pin", or empty for the second pin of the first source.
+	// A name that nothing on the sheet bears is kept, for somebody may draw it yet, and means the same as an empty one.
 	Reference string
 	Parts     []Part
 	Wires     []Wire
@@ -50,7 +51,7 @@ type Case struct {
 	Name      string
 	Follows   string            // the case whose coil states it starts from; empty for none
 	Supply    kinds.Level       // never empty in a decoded sheet
-	Positions map[string]string // by reference; what is not named is at rest
+	Positions map[string]string // by reference; what is not named is at rest; nil when none is named
 	Timers    map[string]string // by reference: "running" or "elapsed"
 }
 
@@ -114,8 +115,22 @@ func (c *Case) Position(part *Part) string {
 	if position, ok := c.Positions[part.Ref]; ok {
 		return position
 	}
-	if part.Kind.Positions == nil {
+	return part.rest()
+}
+
+// rest is the position of a part that no case names: the first one of its kind.
+func (p *Part) rest() string {
+	if p.Kind.Positions == nil {
 		return kinds.Rest
 	}
-	return part.Kind.Positions(part.Fill())[0]
+	return p.Kind.Positions(p.Fill())[0]
+}
+
+// byRef finds parts by their references.
+func (s *Sheet) byRef() map[string]*Part {
+	parts := make(map[string]*Part, len(s.Parts))
+	for i := range s.Parts {
+		parts[s.Parts[i].Ref] = &s.Parts[i]
+	}
+	return parts
 }

@@ -2,12 +2,13 @@ package schematic
 
 import (
 	"bytes"
-	"encoding/json"
 	"errors"
 	"fmt"
 	"io"
 	"strconv"
 	"unicode/utf8"
+
+	"github.com/go-json-experiment/json/jsontext"
 )
 
 // PlaceError is what is wrong with a sheet or an edit, and where.
@@ -28,7 +29,17 @@ func refuse(place, format string, arguments ...any) error {
 	return &PlaceError{place, fmt.Sprintf(format, arguments...)}
 }
 
-// member is one field of a JSON object; order and doubles are kept, which encoding/json would lose.
+// SyntaxError is text that is no JSON at all. It is a PlaceError too, whose place is a line.
+type SyntaxError struct{ PlaceError }
+
+// Unwrap gives the PlaceError.
+func (e *SyntaxError) Unwrap() error { return &e.PlaceError }
+
+func noJSON(place, reason string) error {
+	return &SyntaxError{PlaceError{place, "this is no JSON: " + reason}}
+}
+
+// member is one field of a JSON object; their order is kept, so that the first mistake of a file is the one that is told.
 type member struct {
 	key   string
 	value any
@@ -37,75 +48,97 @@ type member struct {
 // object is a JSON object; arrays are []any, and numbers are float64.
 type object []member
 
-// deepest is how deep JSON may be nested; a sheet needs six levels.
+// deepest is how deep JSON may be nested; a batch of edits needs six levels.
 const deepest = 16
 
-// parse reads JSON into objects, arrays and plain values, and refuses what encoding/json would let pass: a byte order
-// mark, text that is not UTF-8, a field given twice, and anything after the end.
+// parse reads JSON into objects, arrays and plain values. It refuses a byte order mark, text that is not UTF-8, a field
+// given twice, and anything after the end.
 func parse(data []byte) (any, error) {
 	switch {
-	case bytes.HasPrefix(data, []byte("\xef\xbb\xbf")):
-		return nil, refuse("", "the file begins with a byte order mark; save it as UTF-8 without one")
+	case bytes.HasPrefix(data, []byte("\ufeff")):
+		return nil, noJSON("", "it begins with a byte order mark; save it as UTF-8 without one")
 	case !utf8.Valid(data):
-		return nil, refuse("", "the file is not UTF-8; save it as UTF-8")
+		return nil, noJSON("", "it is not UTF-8; save it as UTF-8")
 	}
-	p := parser{decoder: json.NewDecoder(bytes.NewReader(data)), data: data}
-	p.decoder.UseNumber()
-	value, err := p.value("", 0)
+	p := parser{jsontext.NewDecoder(bytes.NewBuffer(data), jsontext.AllowDuplicateNames(true)), data}
+	value, err := p.value()
 	if err != nil {
 		return nil, err
 	}
-	if _, err := p.decoder.Token(); !errors.Is(err, io.EOF) {
-		return nil, p.syntax(errors.New("there is something after the end of the sheet"))
+	if _, err := p.decoder.ReadToken(); !errors.Is(err, io.EOF) {
+		return nil, noJSON(p.line(p.decoder.InputOffset()), "there is something after its end; take it away")
 	}
 	return value, nil
 }
 
 type parser struct {
-	decoder *json.Decoder
+	decoder *jsontext.Decoder
 	data    []byte
 }
 
-// SyntaxError is JSON that cannot be read at all.
-type SyntaxError struct{ PlaceError }
-
+// syntax says in our words what the decoder found.
 func (p *parser) syntax(err error) error {
-	line := 1 + bytes.Count(p.data[:min(int64(len(p.data)), p.decoder.InputOffset())], []byte("\n"))
-	reason := err.Error()
+	offset, reason := p.decoder.InputOffset(), err.Error()
+	if wrong := (*jsontext.SyntacticError)(nil); errors.As(err, &wrong) {
+		offset, reason = wrong.ByteOffset, wrong.Err.Error()
+	}
 	if errors.Is(err, io.EOF) || errors.Is(err, io.ErrUnexpectedEOF) {
 		reason = "it ends too early"
 	}
-	return &SyntaxError{PlaceError{"line " + strconv.Itoa(line), "this is no JSON: " + reason}}
+	return noJSON(p.line(offset), reason)
 }
 
-func (p *parser) value(place string, depth int) (any, error) {
-	token, err := p.decoder.Token()
+// line names the line that a byte is on.
+func (p *parser) line(offset int64) string {
+	return "line " + strconv.Itoa(1+bytes.Count(p.data[:min(int64(len(p.data)), offset)], []byte("\n")))
+}
+
+// place names the value that was read last.
+func (p *parser) place() string {
+	place := ""
+	depth := 0
+	for token := range p.decoder.StackPointer().Tokens() {
+		depth++
+		if kind, _ := p.decoder.StackIndex(depth); kind == '[' {
+			place += "[" + token + "]"
+		} else {
+			place = under(place, token)
+		}
+	}
+	return place
+}
+
+func (p *parser) value() (any, error) {
+	token, err := p.decoder.ReadToken()
 	if err != nil {
 		return nil, p.syntax(err)
 	}
-	if depth > deepest {
-		return nil, refuse(place, "it is nested too deep")
+	if p.decoder.StackDepth() > deepest {
+		return nil, refuse(p.place(), "it is nested too deep")
 	}
-	switch token := token.(type) {
-	case json.Delim:
-		if token == '[' {
-			return p.array(place, depth)
-		}
-		return p.object(place, depth)
-	case json.Number:
+	switch token.Kind() {
+	case '{':
+		return p.object()
+	case '[':
+		return p.array()
+	case '"':
+		return token.String(), nil
+	case '0':
 		number, err := strconv.ParseFloat(token.String(), 64)
 		if err != nil {
-			return nil, refuse(place, "the number %s is too large", token)
+			return nil, refuse(p.place(), "the number is too large")
 		}
 		return number, nil
+	case 'n':
+		return nil, nil
 	}
-	return token, nil
+	return token.Bool(), nil
 }
 
-func (p *parser) array(place string, depth int) (any, error) {
+func (p *parser) array() (any, error) {
 	list := []any{}
-	for p.decoder.More() {
-		value, err := p.value(at(place, len(list)), depth+1)
+	for p.decoder.PeekKind() != ']' {
+		value, err := p.value()
 		if err != nil {
 			return nil, err
 		}
@@ -114,20 +147,31 @@ func (p *parser) array(place string, depth int) (any, error) {
 	return list, p.closing()
 }
 
-func (p *parser) object(place string, depth int) (any, error) {
+// few is how many fields are searched one after the other, because that is faster than a map.
+const few = 16
+
+func (p *parser) object() (any, error) {
 	fields := object{}
-	seen := map[string]bool{}
-	for p.decoder.More() {
-		token, err := p.decoder.Token()
+	var seen map[string]bool
+	for p.decoder.PeekKind() != '}' {
+		token, err := p.decoder.ReadToken()
 		if err != nil {
 			return nil, p.syntax(err)
 		}
-		key := token.(string) // the decoder refuses any other key
-		if seen[key] {
-			return nil, refuse(under(place, key), "the field is given twice; leave one out")
+		key := token.String()
+		if len(fields) == few {
+			seen = make(map[string]bool, 2*few)
+			for _, m := range fields {
+				seen[m.key] = true
+			}
 		}
-		seen[key] = true
-		value, err := p.value(under(place, key), depth+1)
+		if seen[key] || (seen == nil && has(fields, key)) {
+			return nil, refuse(p.place(), "the field is given twice; leave one out")
+		}
+		if seen != nil {
+			seen[key] = true
+		}
+		value, err := p.value()
 		if err != nil {
 			return nil, err
 		}
@@ -138,139 +182,8 @@ func (p *parser) object(place string, depth int) (any, error) {
 
 // closing takes the bracket that ends an array or an object.
 func (p *parser) closing() error {
-	if _, err := p.decoder.Token(); err != nil {
+	if _, err := p.decoder.ReadToken(); err != nil {
 		return p.syntax(err)
 	}
 	return nil
-}
-
-// under is the place of a field.
-func under(place, key string) string {
-	if place == "" {
-		return key
-	}
-	return place + "." + key
-}
-
-// at is the place of an item of a list.
-func at(place string, index int) string { return place + "[" + strconv.Itoa(index) + "]" }
-
-// readers says how each field of an object is read.
-type readers map[string]func(value any, place string) error
-
-// readFields takes an object apart; fields without a reader and null are refused.
-func readFields(value any, place, what string, fields readers) error {
-	members, ok := value.(object)
-	if !ok {
-		return refuse(place, "write %s as an object in braces", what)
-	}
-	for _, m := range members {
-		read, known := fields[m.key]
-		here := under(place, m.key)
-		if !known {
-			return refuse(here, "%s has no field of this name; leave it out", what)
-		}
-		if m.value == nil {
-			return refuse(here, "null is no value; leave the field out")
-		}
-		if err := read(m.value, here); err != nil {
-			return err
-		}
-	}
-	return nil
-}
-
-// has reports whether an object has a field.
-func has(value any, key string) bool {
-	members, _ := value.(object)
-	for _, m := range members {
-		if m.key == key {
-			return true
-		}
-	}
-	return false
-}
-
-// list reads each item of an array.
-func list(value any, place string, each func(item any, place string) error) error {
-	items, ok := value.([]any)
-	if !ok {
-		return refuse(place, "write a list in square brackets")
-	}
-	for i, item := range items {
-		if err := each(item, at(place, i)); err != nil {
-			return err
-		}
-	}
-	return nil
-}
-
-// furthest bounds how far from the origin anything may lie, in grid steps.
-const furthest = 100000
-
-func readWhole(value any, place string) (int, error) {
-	number, ok := value.(float64)
-	if !ok || number != float64(int(number)) {
-		return 0, refuse(place, "write a whole number of grid steps")
-	}
-	if number > furthest || number < -furthest {
-		return 0, refuse(place, "the place is more than %d grid steps away", furthest)
-	}
-	return int(number), nil
-}
-
-func readPoint(value any, place string) (Point, error) {
-	items, ok := value.([]any)
-	if !ok || len(items) != 2 {
-		return Point{}, refuse(place, "write a place as [x, y]")
-	}
-	x, err := readWhole(items[0], at(place, 0))
-	if err != nil {
-		return Point{}, err
-	}
-	y, err := readWhole(items[1], at(place, 1))
-	return Point{x, y}, err
-}
-
-// intoText reads a text into a string.
-func intoText(target *string) func(any, string) error {
-	return func(value any, place string) error {
-		text, ok := value.(string)
-		if !ok {
-			return refuse(place, "write it as text")
-		}
-		*target = text
-		return nil
-	}
-}
-
-// intoPoint reads a place into a Point.
-func intoPoint(target *Point) func(any, string) error {
-	return func(value any, place string) (err error) {
-		*target, err = readPoint(value, place)
-		return err
-	}
-}
-
-// intoPoints reads a list of places.
-func intoPoints(target *[]Point) func(any, string) error {
-	return func(value any, place string) error {
-		return list(value, place, func(item any, place string) error {
-			p, err := readPoint(item, place)
-			*target = append(*target, p)
-			return err
-		})
-	}
-}
-
-// intoTexts reads a list of texts.
-func intoTexts(target *[]string) func(any, string) error {
-	return func(value any, place string) error {
-		return list(value, place, func(item any, place string) error {
-			var text string
-			err := intoText(&text)(item, place)
-			*target = append(*target, text)
-			return err
-		})
-	}
 }
