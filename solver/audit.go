@@ -29,13 +29,17 @@ func (p *Plan[T]) Audit(ctx context.Context, solution *Solution[T]) error {
 // extent holds the largest values of a case.
 type extent struct{ current, voltage, power float64 }
 
+// largestOf finds them. The EMF of a source belongs to the voltages, also where its impedance takes all of it.
 func largestOf[T Scalar](solution *Solution[T]) extent {
 	var e extent
 	for b, j := range solution.Current {
-		u := solution.Voltage[b]
+		u, law := solution.Voltage[b], &solution.Laws[b]
 		e.current = max(e.current, modulus(j))
 		e.voltage = max(e.voltage, modulus(u))
 		e.power = max(e.power, modulus(u)*modulus(j))
+		if law.Beta == 1 {
+			e.voltage = max(e.voltage, modulus(law.Gamma))
+		}
 	}
 	for _, v := range solution.Node {
 		e.voltage = max(e.voltage, modulus(v))

@@ -101,14 +101,14 @@ func (g *cutGraph[T]) smallest(code Code, accept func(lump int) bool) *Problem {
 			sum = -sum
 		}
 		problem.Sum = asComplex(sum)
-		problem.Open = g.wayBack(strongest)
+		problem.Open, _ = g.wayBack(strongest)
 	}
 	return problem
 }
 
-// wayBack gives the fewest open branches that, once closed, let the current of a source return; none when that needs
-// more than closing contacts.
-func (g *cutGraph[T]) wayBack(source int) []int {
+// wayBack gives the fewest open branches that, once closed, let the current of a source return; none is needed when it
+// can return already. It reports false when closing contacts is not enough.
+func (g *cutGraph[T]) wayBack(source int) (open []int, possible bool) {
 	var conducting []int
 	for b := range g.laws {
 		if b != source && (!g.source(b) || g.laws[b].Gamma == 0) {
@@ -118,13 +118,12 @@ func (g *cutGraph[T]) wayBack(source int) []int {
 	walk := newSpread(g.network, conducting)
 	walk.fewest(g.network.Branches[source].To, func(b int) bool { return g.laws[b].open() })
 	if !walk.has(g.network.Branches[source].From) {
-		return nil
+		return nil, false
 	}
-	var open []int
 	for _, step := range walk.pathTo(g.network.Branches[source].From) {
 		if g.laws[step.Branch].open() {
 			open = append(open, step.Branch)
 		}
 	}
-	return sortedUnique(open)
+	return sortedUnique(open), true
 }

@@ -86,19 +86,33 @@ func (g *idealGraph[T]) undetermined() *Problem {
 	return g.problem(Undetermined, g.shortest(func(T, float64) bool { return true }))
 }
 
+// problem states the loop in the sense in which its sum is positive, in AC: has a positive real part.
 func (g *idealGraph[T]) problem(code Code, loop []Step) *Problem {
-	var sum T
-	total := 0.0
-	branches := make([]int, len(loop))
-	for k, step := range loop {
-		branches[k] = step.Branch
-		sum += signed(step.Sense, g.emf(step.Branch))
-		total += magnitude(g.emf(step.Branch))
-	}
+	sum, total := g.around(loop)
 	if balanced(sum, total) {
 		sum = 0
 	}
+	if real(asComplex(sum)) < 0 {
+		sum = -sum
+		slices.Reverse(loop)
+		for k := range loop {
+			loop[k].Sense = -loop[k].Sense
+		}
+	}
+	branches := make([]int, len(loop))
+	for k, step := range loop {
+		branches[k] = step.Branch
+	}
 	return &Problem{Code: code, Branches: sortedUnique(branches), Loop: loop, Sum: asComplex(sum)}
+}
+
+// around adds up the voltages of a loop, and their magnitudes.
+func (g *idealGraph[T]) around(loop []Step) (sum T, total float64) {
+	for _, step := range loop {
+		sum += signed(step.Sense, g.emf(step.Branch))
+		total += magnitude(g.emf(step.Branch))
+	}
+	return sum, total
 }
 
 // shortest gives the shortest loop whose sum of voltages is accepted. Among the loops that consist of two shortest paths

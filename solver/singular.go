@@ -11,9 +11,12 @@ func (p *Plan[T]) singular(s *meshSystem[T], laws []Law[T]) error {
 	if !independent(p.network.Meshes) {
 		return errors.New("the meshes are not independent: one of them is a combination of others")
 	}
+	cuts := newCutGraph(p.network, laws)
 	for b := range laws {
-		if laws[b].setsCurrent() && laws[b].controlled() && p.bridge(b) {
-			return &Problem{Code: NoReturnPath, Branches: []int{b}, Open: newCutGraph(p.network, laws).wayBack(b)}
+		if laws[b].setsCurrent() && laws[b].controlled() {
+			if open, possible := cuts.wayBack(b); !possible || len(open) > 0 {
+				return &Problem{Code: NoReturnPath, Branches: []int{b}, Open: open}
+			}
 		}
 	}
 	problem := &Problem{Code: Undetermined}
@@ -28,21 +31,6 @@ func (p *Plan[T]) singular(s *meshSystem[T], laws []Law[T]) error {
 		problem.Code, problem.Branches = ControlLoop, controlled
 	}
 	return problem
-}
-
-// bridge reports whether no mesh current passes through a branch.
-func (p *Plan[T]) bridge(b int) bool {
-	net := map[int]int{}
-	meshes, senses := p.through.of(b)
-	for k, m := range meshes {
-		net[m] += senses[k]
-	}
-	for _, sense := range net {
-		if sense != 0 {
-			return false
-		}
-	}
-	return true
 }
 
 // undetermined gives the branches whose current or voltage could change without any equation noticing.

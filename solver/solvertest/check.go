@@ -19,6 +19,9 @@ func Check[T solver.Scalar](t testing.TB, n *solver.Network[T], s *solver.Soluti
 	for b := range s.Current {
 		c.amperes = max(c.amperes, size(s.Current[b]))
 		c.volts = max(c.volts, size(s.Voltage[b]))
+		if s.Laws[b].Beta == 1 { // an EMF, which its impedance may take
+			c.volts = max(c.volts, size(s.Laws[b].Gamma))
+		}
 	}
 	c.floats()
 	c.currents()
