@@ -82,6 +82,9 @@ func widest(outline []stroke.Point, lines []segment) (center stroke.Point, radiu
 		return cell{p, half, clearance(p, outline, lines)}
 	}
 	best := at((box.Left+box.Right)/2, (box.Top+box.Bottom)/2, 0)
+	if best.room >= math.Min(box.Right-box.Left, box.Bottom-box.Top)/2 {
+		return best.middle, best.room // no place within the box is wider
+	}
 	half := math.Max(1, math.Min(box.Right-box.Left, box.Bottom-box.Top)) / 2
 	var open []cell
 	for y := box.Top + half; y < box.Bottom+half; y += 2 * half {

@@ -35,16 +35,16 @@ const (
 )
 
 type event struct {
-	along, kind int
-	low, high   int // columns: of a line its own twice, of a question the bounds that do not count themselves
-	edge        int // that asks, −1 for a line
+	order     int // three times the row, plus the kind
+	low, high int // columns: of a line its own twice, of a question the bounds that do not count themselves
+	edge      int // that asks, −1 for a line
 }
 
 // sweep marks the level lines that an upright line crosses, and the branches among them that run over a place. A row
 // moves down the sheet and counts the upright lines that it cuts, by column. What is level and upright depends on how
 // points are read, so that a second sweep does the same for upright lines.
 func (g *plane) sweep(read func(schematic.Point) (across, along int)) {
-	var events []event
+	events := make([]event, 0, 2*len(g.edges))
 	columns := make([]int, 0, len(g.places))
 	for i := range g.edges {
 		a, b := g.line(i)
@@ -52,19 +52,19 @@ func (g *plane) sweep(read func(schematic.Point) (across, along int)) {
 		x2, y2 := read(b)
 		switch {
 		case x1 == x2:
-			events = append(events, event{min(y1, y2), begins, x1, x1, -1}, event{max(y1, y2), ends, x1, x1, -1})
+			events = append(events, event{3*min(y1, y2) + begins, x1, x1, -1}, event{3*max(y1, y2) + ends, x1, x1, -1})
 			columns = append(columns, x1)
 		case y1 == y2:
-			events = append(events, event{y1, asks, min(x1, x2), max(x1, x2), i})
+			events = append(events, event{3*y1 + asks, min(x1, x2), max(x1, x2), i})
 		}
 	}
 	slices.Sort(columns)
 	columns = slices.Compact(columns)
-	slices.SortFunc(events, func(a, b event) int { return cmp.Or(cmp.Compare(a.along, b.along), cmp.Compare(a.kind, b.kind)) })
+	slices.SortFunc(events, func(a, b event) int { return a.order - b.order })
 	active := newCounter(len(columns))
 	for _, e := range events {
 		low := sort.SearchInts(columns, e.low)
-		switch e.kind {
+		switch (e.order%3 + 3) % 3 {
 		case begins:
 			active.add(low, 1)
 		case ends:

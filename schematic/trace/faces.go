@@ -87,7 +87,7 @@ func (f *face) add(g *plane, half int) {
 //
 // Such faces depend on one another only where a ring of wire surrounds some of them: then every branch on one of a group
 // of faces lies on another one of that group as well, so that they add up to nothing. The one with the most branches is
-// left out, the last of them as one reads.
+// left out; of those, the largest, and the last as one reads.
 func (f *faces) keep() []*face {
 	groups := newSets(len(f.list))
 	for i := range f.edges {
@@ -112,7 +112,7 @@ func (f *faces) keep() []*face {
 	most := map[int]*face{}
 	for _, walk := range kept {
 		group := groups.find(walk.number)
-		if !free[group] && (most[group] == nil || most[group].steps <= walk.steps) {
+		if !free[group] && (most[group] == nil || cmp.Or(walk.steps-most[group].steps, walk.area-most[group].area) >= 0) {
 			most[group] = walk
 		}
 	}

@@ -176,7 +176,7 @@ func (s *loopSearch) consider(steps []Step) {
 	found := loop{steps: steps, place: len(s.d.Joins.Places), class: make([]uint64, s.classes.words)}
 	for _, step := range steps {
 		from, to := s.d.ends(step.Branch)
-		found.place = min(found.place, s.d.Joins.Node[from], s.d.Joins.Node[to])
+		found.place = min(found.place, from, to)
 		found.branches = append(found.branches, step.Branch)
 		s.classes.add(found.class, step.Branch)
 	}

@@ -34,18 +34,10 @@ func (d *Drawing) plane() *plane {
 	}
 	for b := range d.Branches {
 		from, to := d.ends(b)
-		g.edges = append(g.edges, edge{from: d.Joins.Node[from], to: d.Joins.Node[to], branch: b})
+		g.edges = append(g.edges, edge{from: from, to: to, branch: b})
 	}
 	g.turn()
 	return g
-}
-
-// ends are the places of the two pins of a branch.
-func (d *Drawing) ends(b int) (from, to schematic.Point) {
-	part := &d.Sheet.Parts[d.Branches[b].Part]
-	first, _ := part.Kind.Pin(d.Branches[b].Pins[0])
-	second, _ := part.Kind.Pin(d.Branches[b].Pins[1])
-	return part.Pin(first), part.Pin(second)
 }
 
 // ends are the places between which a half edge runs.

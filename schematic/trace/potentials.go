@@ -1,146 +1,108 @@
 package trace
 
 import (
-	"cmp"
+	"fmt"
 	"slices"
 	"strconv"
-	"strings"
 
-	"loopwright/schematic"
+	"loopwright/schematic/kinds"
 )
 
-// findPotentials joins groups of one name and numbers what results.
+// findPotentials joins groups of one name and numbers what results: the reference is 0, the others are 1, 2 … in reading
+// order, each by its topmost place, and of its places at that height by the leftmost.
 func (d *Drawing) findPotentials() {
-	sets := newSets(d.Joins.Groups)
-	names := d.joinNames(sets)
-	order, at := d.readingOrder(sets)
-	d.Potentials = make([]Potential, len(order))
-	for i, root := range order {
-		d.Potentials[i].Name = names[root]
-	}
+	joined := newSets(d.Joins.Groups)
+	names := d.joinNames(joined)
+	number := d.readingOrder(joined)
 	d.WirePotential = make([]int, len(d.Sheet.Wires))
 	for w, group := range d.Joins.Wires {
-		d.WirePotential[w] = at[sets.find(group)]
+		d.WirePotential[w] = number[joined.find(group)]
 	}
 	d.PinPotential = make([][]int, len(d.Sheet.Parts))
 	for i, pins := range d.Joins.Pins {
 		d.PinPotential[i] = make([]int, len(pins))
 		for k, group := range pins {
-			d.PinPotential[i][k] = at[sets.find(group)]
+			d.PinPotential[i][k] = number[joined.find(group)]
 		}
 	}
-	d.listPins()
-	d.putReferenceFirst()
+	d.putFirst(d.reference())
 	for i := range d.Potentials {
 		d.Potentials[i].Number = strconv.Itoa(i)
 	}
+	for _, part := range names {
+		if p := &d.Potentials[d.PinPotential[part][0]]; p.Name == "" {
+			p.Name = d.nameOf(part)
+		}
+	}
+	d.listPins()
 }
 
-// joinNames unites the groups that potentials and earths give one name, and gives the name of each root.
-func (d *Drawing) joinNames(sets sets) map[int]string {
+// nameOf is the name that a part gives to its potential, empty for most kinds.
+func (d *Drawing) nameOf(part int) string {
+	if joins := d.Sheet.Parts[part].Kind.Joins; joins != nil {
+		return joins(d.Sheet.Parts[part].Fill())
+	}
+	return ""
+}
+
+// joinNames unites the groups to which potentials and earths give one name, and gives those parts, in their order.
+func (d *Drawing) joinNames(joined sets) (named []int) {
 	first := map[string]int{}
 	for i := range d.Sheet.Parts {
-		part := &d.Sheet.Parts[i]
-		if part.Kind.Joins == nil {
+		name := d.nameOf(i)
+		if name == "" {
 			continue
 		}
-		name, group := part.Kind.Joins(part.Fill()), d.Joins.Pins[i][0]
+		named = append(named, i)
+		group := d.Joins.Pins[i][0]
 		if other, known := first[name]; known {
-			sets.union(other, group)
+			joined.union(other, group)
 		} else {
 			first[name] = group
 		}
 	}
-	names := map[int]string{}
-	for _, name := range sortedKeys(first) {
-		root := sets.find(first[name])
-		if names[root] == "" {
-			names[root] = name
-		}
-	}
-	return names
+	return named
 }
 
-func sortedKeys(m map[string]int) []string {
-	keys := make([]string, 0, len(m))
-	for key := range m {
-		keys = append(keys, key)
-	}
-	slices.Sort(keys)
-	return keys
-}
-
-// readingOrder lists the roots by the first place at which each is met from the top left, and gives the way back.
-func (d *Drawing) readingOrder(sets sets) (order []int, at map[int]int) {
-	group := make([]int, len(d.Joins.Places))
-	for i := range group {
-		group[i] = -1
-	}
-	for i := range d.Sheet.Parts {
-		for k, pin := range d.Sheet.Parts[i].Kind.Pins {
-			group[d.Joins.Node[d.Sheet.Parts[i].Pin(pin)]] = d.Joins.Pins[i][k]
+// readingOrder makes the potentials and gives the number of each by its representative.
+func (d *Drawing) readingOrder(joined sets) (number []int) {
+	group := make([]int, len(d.Joins.Places)) // one more than the group of each place
+	for i, pins := range d.places {
+		for k, place := range pins {
+			group[place] = d.Joins.Pins[i][k] + 1
 		}
 	}
 	for _, piece := range d.Joins.Pieces {
-		group[d.Joins.Node[piece.From]] = d.Joins.Wires[piece.Wire]
-		group[d.Joins.Node[piece.To]] = d.Joins.Wires[piece.Wire]
+		group[d.Joins.Node[piece.From]] = d.Joins.Wires[piece.Wire] + 1
+		group[d.Joins.Node[piece.To]] = d.Joins.Wires[piece.Wire] + 1
 	}
-	at = map[int]int{}
+	number = make([]int, d.Joins.Groups)
+	for i := range number {
+		number[i] = -1
+	}
 	for _, g := range group {
-		if g < 0 {
+		if g == 0 {
 			continue
 		}
-		if root := sets.find(g); !has(at, root) {
-			at[root] = len(order)
-			order = append(order, root)
+		if root := joined.find(g - 1); number[root] < 0 {
+			number[root] = len(d.Potentials)
+			d.Potentials = append(d.Potentials, Potential{})
 		}
 	}
-	return order, at
+	return number
 }
 
-func has[K comparable, V any](m map[K]V, key K) bool { _, ok := m[key]; return ok }
-
-func (d *Drawing) listPins() {
-	type placed struct {
-		name string
-		at   schematic.Point
-	}
-	lists := make([][]placed, len(d.Potentials))
-	for i := range d.Sheet.Parts {
-		part := &d.Sheet.Parts[i]
-		for k, pin := range part.Kind.Pins {
-			p := d.PinPotential[i][k]
-			lists[p] = append(lists[p], placed{part.Ref + ":" + pin.Name, part.Pin(pin)})
-		}
-	}
-	for i, list := range lists {
-		slices.SortStableFunc(list, func(a, b placed) int {
-			return cmp.Or(cmp.Compare(a.at.Y, b.at.Y), cmp.Compare(a.at.X, b.at.X))
-		})
-		d.Potentials[i].Pins = make([]string, len(list))
-		for k, p := range list {
-			d.Potentials[i].Pins[k] = p.name
-		}
-	}
-}
-
-// putReferenceFirst makes the reference potential number 0; the others keep their order.
-func (d *Drawing) putReferenceFirst() {
-	reference := d.reference()
-	if reference == 0 {
-		return
-	}
+// putFirst makes one potential number 0; the others keep their order.
+func (d *Drawing) putFirst(first int) {
 	moved := func(i int) int {
 		switch {
-		case i == reference:
+		case i == first:
 			return 0
-		case i < reference:
+		case i < first:
 			return i + 1
 		}
 		return i
 	}
-	front := d.Potentials[reference]
-	d.Potentials = slices.Insert(slices.Delete(d.Potentials, reference, reference+1), 0, front)
 	for w := range d.WirePotential {
 		d.WirePotential[w] = moved(d.WirePotential[w])
 	}
@@ -151,62 +113,102 @@ func (d *Drawing) putReferenceFirst() {
 	}
 }
 
-// reference finds the potential of 0 V: the one that the sheet names, by name or by a pin; else that of the second pin
-// of the first source; else the first in reading order. A name that is not on the sheet counts as none.
+// listPins lists the pins of each potential in reading order.
+func (d *Drawing) listPins() {
+	type pin struct{ place, part, index int }
+	pins := make([]pin, 0, 2*len(d.places))
+	for i, places := range d.places {
+		for k, place := range places {
+			pins = append(pins, pin{place, i, k})
+		}
+	}
+	slices.SortStableFunc(pins, func(a, b pin) int { return a.place - b.place })
+	for _, p := range pins {
+		part, potential := &d.Sheet.Parts[p.part], &d.Potentials[d.PinPotential[p.part][p.index]]
+		potential.Pins = append(potential.Pins, part.Ref+":"+part.Kind.Pins[p.index].Name)
+	}
+}
+
+// reference finds the potential of 0 V: the one that the sheet names, by name or by a pin; else that of the second pin of
+// the first source; else the first in reading order. A name that is not on the sheet counts as none.
 func (d *Drawing) reference() int {
-	wanted := d.Sheet.Reference
-	for i := range d.Sheet.Parts {
-		if part := &d.Sheet.Parts[i]; part.Kind.Joins != nil && part.Kind.Joins(part.Fill()) == wanted {
-			return d.PinPotential[i][0]
-		}
-	}
-	if ref, name, found := cutLast(wanted); found {
-		for i := range d.Sheet.Parts {
-			if k := pinIndex(&d.Sheet.Parts[i], name); d.Sheet.Parts[i].Ref == ref && k >= 0 {
-				return d.PinPotential[i][k]
-			}
+	if wanted := d.Sheet.Reference; wanted != "" {
+		if found, ok := d.named(wanted); ok {
+			return found
 		}
 	}
 	for i := range d.Sheet.Parts {
-		if part := &d.Sheet.Parts[i]; part.Kind.Delivers && len(part.Kind.Pins) > 1 {
+		if kind := d.Sheet.Parts[i].Kind; kind.Delivers && len(kind.Pins) > 1 {
 			return d.PinPotential[i][1]
 		}
 	}
 	return 0
 }
 
-// cutLast parts "K1:2:A1" into "K1:2" and "A1".
-func cutLast(text string) (ref, pin string, found bool) {
-	i := strings.LastIndexByte(text, ':')
-	if i < 0 {
-		return "", "", false
-	}
-	return text[:i], text[i+1:], true
-}
-
-func pinIndex(part *schematic.Part, name string) int {
-	for k, pin := range part.Kind.Pins {
-		if pin.Name == name {
-			return k
+// named finds a potential by its name or one of its pins.
+func (d *Drawing) named(name string) (potential int, found bool) {
+	for i := range d.Sheet.Parts {
+		if d.nameOf(i) == name {
+			return d.PinPotential[i][0], true
 		}
 	}
-	return -1
+	for i := range d.Sheet.Parts {
+		part := &d.Sheet.Parts[i]
+		if len(name) > len(part.Ref) && name[:len(part.Ref)] == part.Ref {
+			for k, pin := range part.Kind.Pins {
+				if name == part.Ref+":"+pin.Name {
+					return d.PinPotential[i][k], true
+				}
+			}
+		}
+	}
+	return 0, false
 }
 
 // numberWires gives one wire number to all potentials that one conductor runs through: the lowest of their numbers.
 func (d *Drawing) numberWires() {
-	sets := newSets(len(d.Potentials))
+	joined := newSets(len(d.Potentials))
 	for _, branch := range d.Branches {
 		if d.Sheet.Parts[branch.Part].Kind.SameConductor {
-			sets.union(branch.From, branch.To)
+			joined.union(branch.From, branch.To)
 		}
 	}
-	lowest := map[int]string{}
 	for i := range d.Potentials {
-		root := sets.find(i)
-		if lowest[root] == "" {
-			lowest[root] = d.Potentials[i].Number
+		d.Potentials[i].WireNumber = d.Potentials[joined.find(i)].Number
+	}
+}
+
+// stateNames says where a name does not do what one expects of it: the reference is on no potential, or two names that
+// ought to be apart are one potential. Earth is left out, since a circuit is joined to it on purpose.
+func (d *Drawing) stateNames() {
+	if wanted := d.Sheet.Reference; wanted != "" && len(d.Potentials) > 0 {
+		if _, found := d.named(wanted); !found {
+			instead := "the first potential"
+			if pins := d.Potentials[0].Pins; len(pins) > 0 {
+				instead = "the potential of -" + pins[0]
+			}
+			d.Statements = append(d.Statements, Statement{
+				Rule: "reference", Says: fmt.Sprintf("The reference %s is not on the sheet; %s is taken as 0 V.", wanted, instead),
+			})
 		}
-		d.Potentials[i].WireNumber = lowest[root]
+	}
+	names := make([][]int, len(d.Potentials))
+	for i := range d.Sheet.Parts {
+		if name := d.nameOf(i); name != "" && d.Sheet.Parts[i].Kind == kinds.Potential {
+			p := d.PinPotential[i][0]
+			if !slices.ContainsFunc(names[p], func(other int) bool { return d.nameOf(other) == name }) {
+				names[p] = append(names[p], i)
+			}
+		}
+	}
+	for _, parts := range names {
+		if len(parts) < 2 {
+			continue
+		}
+		one, other := &d.Sheet.Parts[parts[0]], &d.Sheet.Parts[parts[1]]
+		d.Statements = append(d.Statements, Statement{
+			Rule: "two-names", Refs: []string{one.Ref, other.Ref},
+			Says: fmt.Sprintf("%s and %s are joined and are one potential.", d.nameOf(parts[0]), d.nameOf(parts[1])),
+		})
 	}
 }

@@ -8,12 +8,18 @@ import (
 	"loopwright/schematic"
 )
 
-// state says what hangs free and what floats.
+// state says what hangs free, what floats, and which names are not what they seem.
 func (d *Drawing) state() {
-	ways := make([]int, len(d.Joins.Places)) // pieces of wire that meet at each place
+	d.stateNames()
+	ways := make([]int, len(d.Joins.Places)) // pieces of wire that meet at each place, and pins that lie there
 	for _, piece := range d.Joins.Pieces {
 		ways[d.Joins.Node[piece.From]]++
 		ways[d.Joins.Node[piece.To]]++
+	}
+	for _, pins := range d.places {
+		for _, place := range pins {
+			ways[place]++
+		}
 	}
 	d.stateOpenPins(ways)
 	d.stateDanglingEnds(ways)
@@ -28,13 +34,12 @@ func (d *Drawing) stateOpenPins(ways []int) {
 			continue
 		}
 		for k, pin := range part.Kind.Pins {
-			potential := &d.Potentials[d.PinPotential[i][k]]
-			place := part.Pin(pin)
-			if len(potential.Pins) > 1 || ways[d.Joins.Node[place]] > 0 {
+			if ways[d.places[i][k]] > 1 {
 				continue
 			}
+			at := part.Pin(pin)
 			d.Statements = append(d.Statements, Statement{
-				Rule: "open-pin", Says: fmt.Sprintf("-%s:%s is joined to nothing.", part.Ref, pin.Name), Refs: []string{part.Ref}, At: &place,
+				Rule: "open-pin", Says: fmt.Sprintf("-%s:%s is joined to nothing.", part.Ref, pin.Name), Refs: []string{part.Ref}, At: &at,
 			})
 		}
 	}
@@ -42,19 +47,14 @@ func (d *Drawing) stateOpenPins(ways []int) {
 
 // stateDanglingEnds names the ends of wires at which nothing else is.
 func (d *Drawing) stateDanglingEnds(ways []int) {
-	pinned := map[schematic.Point]bool{}
-	for i := range d.Sheet.Parts {
-		for _, pin := range d.Sheet.Parts[i].Kind.Pins {
-			pinned[d.Sheet.Parts[i].Pin(pin)] = true
-		}
-	}
 	for w := range d.Sheet.Wires {
 		points := d.Sheet.Wires[w].Points
 		for _, end := range []schematic.Point{points[0], points[len(points)-1]} {
-			if ways[d.Joins.Node[end]] == 1 && !pinned[end] {
+			if ways[d.Joins.Node[end]] == 1 {
+				at := end
 				d.Statements = append(d.Statements, Statement{
 					Rule: "dangling-end", Says: fmt.Sprintf("A wire of potential %s ends at nothing.", d.Potentials[d.WirePotential[w]].WireNumber),
-					Wire: d.Sheet.Wires[w].ID, At: &end,
+					Wire: d.Sheet.Wires[w].ID, At: &at,
 				})
 			}
 		}

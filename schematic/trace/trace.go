@@ -3,6 +3,7 @@
 package trace
 
 import (
+	"slices"
 	"time"
 
 	"loopwright/schematic"
@@ -44,7 +45,7 @@ type Mesh struct {
 
 // Statement says what is not joined to what one would expect.
 type Statement struct {
-	Rule string // "dangling-end", "open-pin" or "floating"
+	Rule string // "dangling-end", "open-pin", "floating", "reference" or "two-names"
 	Says string
 	Refs []string
 	Wire string
@@ -64,6 +65,8 @@ type Drawing struct {
 	Reference     int     // the potential of 0 V
 	Statements    []Statement
 	Timing        Timing
+
+	places [][]int // by part and pin, in Joins.Places
 }
 
 // Timing says how long the stretches of tracing took.
@@ -77,6 +80,7 @@ type Timing struct {
 func Trace(sheet *schematic.Sheet) *Drawing {
 	start := time.Now()
 	d := &Drawing{Sheet: sheet, Joins: schematic.Join(sheet)}
+	d.findPlaces()
 	d.findPotentials()
 	d.findBranches()
 	d.numberWires()
@@ -96,21 +100,39 @@ func resting(sheet *schematic.Sheet, part *schematic.Part) kinds.Condition {
 	return condition
 }
 
+func (d *Drawing) findPlaces() {
+	d.places = make([][]int, len(d.Sheet.Parts))
+	for i := range d.Sheet.Parts {
+		part := &d.Sheet.Parts[i]
+		d.places[i] = make([]int, len(part.Kind.Pins))
+		for k, pin := range part.Kind.Pins {
+			d.places[i][k] = d.Joins.Node[part.Pin(pin)]
+		}
+	}
+}
+
 func (d *Drawing) findBranches() {
 	for i := range d.Sheet.Parts {
 		part := &d.Sheet.Parts[i]
 		if part.Kind.Branches == nil {
 			continue
 		}
-		potential := make(map[string]int, len(part.Kind.Pins))
-		for k, pin := range part.Kind.Pins {
-			potential[pin.Name] = d.PinPotential[i][k]
-		}
 		for k, branch := range part.Kind.Branches(part.Fill(), resting(d.Sheet, part)) {
 			d.Branches = append(d.Branches, Branch{
 				Part: i, Ref: part.Ref, Index: k, Pins: [2]string{branch.From, branch.To},
-				From: potential[branch.From], To: potential[branch.To],
+				From: d.PinPotential[i][pinIndex(part.Kind, branch.From)], To: d.PinPotential[i][pinIndex(part.Kind, branch.To)],
 			})
 		}
 	}
+}
+
+func pinIndex(kind *kinds.Kind, name string) int {
+	return slices.IndexFunc(kind.Pins, func(pin kinds.Pin) bool { return pin.Name == name })
+}
+
+// ends are the places of the two pins of a branch.
+func (d *Drawing) ends(b int) (from, to int) {
+	branch := &d.Branches[b]
+	kind := d.Sheet.Parts[branch.Part].Kind
+	return d.places[branch.Part][pinIndex(kind, branch.Pins[0])], d.places[branch.Part][pinIndex(kind, branch.Pins[1])]
 }
