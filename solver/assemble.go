@@ -1,6 +1,9 @@
 package solver
 
-import "loopwright/solver/sparse"
+import (
+	"loopwright/solver/sparse"
+	"loopwright/solver/wide"
+)
 
 // solution turns the unknowns into currents and voltages.
 func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solution[T] {
@@ -38,6 +41,10 @@ func zeroBelow(refinement sparse.Refinement) float64 {
 	return max(nothing*refinement.Size, 16*refinement.Error)
 }
 
+// differenceOnly is how small a current must be against its mesh currents to be taken from the voltage instead, where the
+// law allows that.
+const differenceOnly = 0x1p-50
+
 // branch gives current and voltage of a branch. What its law gives directly is taken from there.
 func (s *meshSystem[T]) branch(b int, law *Law[T]) (j, u T) {
 	through, _ := s.through.of(b)
@@ -47,18 +54,19 @@ func (s *meshSystem[T]) branch(b int, law *Law[T]) (j, u T) {
 	}
 	j = orZero(s.current(b).Round(), max(negligible*total, s.zero))
 	u = orZero(s.voltage(b, law).Round(), s.zero)
-	if s.row[b] < 0 && j == 0 {
-		u = law.Gamma
-	}
+	small := magnitude(j) <= differenceOnly*total
 	j = scaled(j, 1/s.ohms)
-	if law.controlled() {
-		return j, u
-	}
-	if law.Beta == 0 {
+	switch {
+	case law.controlled():
+	case law.Beta == 0:
 		j = law.Gamma / law.Alpha
-	}
-	if law.Alpha == 0 {
+	case law.Alpha == 0:
 		u = law.Gamma / law.Beta
+	case s.row[b] < 0 && j == 0:
+		u = law.Gamma
+	case s.row[b] >= 0 && small:
+		left := wide.Of(law.Gamma).Minus(s.voltage(b, law).Times(law.Beta)).Round()
+		j = orZero(left, max(negligible*magnitude(law.Gamma), magnitude(law.Beta)*s.zero)) / law.Alpha
 	}
 	return j, u
 }
