@@ -11,6 +11,7 @@ import (
 	"github.com/PuerkitoBio/goquery"
 
 	"loopwright/schematic"
+	"loopwright/schematic/kinds"
 	"loopwright/schematic/sheettest"
 	"loopwright/testdata"
 )
@@ -242,41 +243,71 @@ func TestARefusedEditSaysWhyAndChangesNothing(t *testing.T) {
 	}
 }
 
-// twoHundredParts is a grid of 10 by 11 nodes with 199 parts.
-func twoHundredParts() string { return string(schematic.Encode(sheettest.Grid(10, 11))) }
-
-func BenchmarkEditToFragmentsOf200Parts(b *testing.B) {
-	s := run(b)
-	key := s.create(twoHundredParts())
-	revision := 1
-	b.ResetTimer()
-	for i := range b.N {
-		answer := s.sendEdit(key, i, revision, "Rest", fmt.Sprintf(`[{"do":"set","ref":"R90","values":{"resistance":%d}}]`, 100+i))
-		if answer.status != http.StatusOK {
-			b.Fatal(answer.body)
-		}
-		revision++
-		b.ReportMetric(float64(len(answer.body)), "bytes")
+// ladder is a control circuit of 200 parts: a supply between two rails and rungs of a switch, a resistor and a lamp.
+func ladder() string {
+	sheet := schematic.New("Ladder")
+	sheet.Size = "A1"
+	const rungs, pitch, top, bottom = 66, 8, 4, 30
+	part := func(kind *kinds.Kind, ref string, x, y int) {
+		sheet.Parts = append(sheet.Parts, schematic.Part{Ref: ref, Kind: kind, At: schematic.Point{X: x, Y: y}})
 	}
+	wire := func(points ...schematic.Point) {
+		sheet.Wires = append(sheet.Wires, schematic.Wire{ID: fmt.Sprintf("w%d", len(sheet.Wires)+1), Points: points})
+	}
+	const last = pitch * rungs
+	part(kinds.DCSupply, "G1", 0, 15)
+	part(kinds.Earth, "V1", 2, bottom)
+	wire(schematic.Point{X: 0, Y: 13}, schematic.Point{X: 0, Y: top}, schematic.Point{X: last, Y: top})
+	wire(schematic.Point{X: 0, Y: 17}, schematic.Point{X: 0, Y: bottom}, schematic.Point{X: last, Y: bottom})
+	for i := 1; i <= rungs; i++ {
+		x := pitch * i
+		part(kinds.Switch, fmt.Sprintf("S%d", i), x, 9)
+		part(kinds.Resistor, fmt.Sprintf("R%d", i), x, 17)
+		part(kinds.Lamp, fmt.Sprintf("P%d", i), x, 25)
+		for _, y := range [][2]int{{top, 7}, {11, 15}, {19, 23}, {27, bottom}} {
+			wire(schematic.Point{X: x, Y: y[0]}, schematic.Point{X: x, Y: y[1]})
+		}
+	}
+	return string(schematic.Encode(sheet))
 }
 
-func BenchmarkMoveToFragmentsOf200Parts(b *testing.B) {
+// lattice is a grid of 10 by 11 nodes with 199 parts, in which every edit changes every value: the worst case.
+func lattice() string { return string(schematic.Encode(sheettest.Grid(10, 11))) }
+
+// benchmarkEdits measures edits from the page: posted, durable, solved, drawn, and answered with what changed.
+func benchmarkEdits(b *testing.B, sheet string, edit func(i int) string) {
 	s := run(b)
-	key := s.create(twoHundredParts())
-	revision := 1
+	key := s.create(sheet)
+	s.send("GET", "/s/"+key+"/changes?since=0&case=Rest", "")
+	bytes := 0
 	b.ResetTimer()
 	for i := range b.N {
-		answer := s.sendEdit(key, i, revision, "Rest", fmt.Sprintf(`[{"do":"move","refs":["R90"],"by":[0,%d]}]`, 1-2*(i%2)))
+		answer := s.sendEdit(key, i, 1+i, "Rest", "["+edit(i)+"]")
 		if answer.status != http.StatusOK {
 			b.Fatal(answer.body)
 		}
-		revision++
+		bytes += len(answer.body)
 	}
+	b.ReportMetric(float64(bytes)/float64(b.N), "bytes/op")
+}
+
+func BenchmarkEditToFragmentsOf200Parts(b *testing.B) {
+	operate := func(i int) string {
+		return fmt.Sprintf(`{"do":"operate","case":"Rest","ref":"S30","position":"%s"}`, []string{"operated", "rest"}[i%2])
+	}
+	move := func(i int) string { return fmt.Sprintf(`{"do":"move","refs":["R30"],"by":[0,%d]}`, 1-2*(i%2)) }
+	b.Run("a switch operated", func(b *testing.B) { benchmarkEdits(b, ladder(), operate) })
+	b.Run("a part moved", func(b *testing.B) { benchmarkEdits(b, ladder(), move) })
+	b.Run("every value changed", func(b *testing.B) {
+		benchmarkEdits(b, lattice(), func(i int) string {
+			return fmt.Sprintf(`{"do":"set","ref":"R90","values":{"resistance":%d}}`, 100+i)
+		})
+	})
 }
 
 func BenchmarkPageOf200Parts(b *testing.B) {
 	s := run(b)
-	key := s.create(twoHundredParts())
+	key := s.create(ladder())
 	for b.Loop() {
 		if answer := s.send("GET", "/s/"+key, ""); answer.status != http.StatusOK {
 			b.Fatal(answer.body)

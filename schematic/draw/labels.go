@@ -1,7 +1,6 @@
 package draw
 
 import (
-	"slices"
 	"strings"
 
 	"loopwright/schematic/stroke"
@@ -59,12 +58,8 @@ func (s *symbol) written() []string {
 
 // spoken is what a screen reader says of the part; it begins with what is written at it.
 func (s *symbol) spoken(r *reading) string {
-	// What can be seen comes first and together, so that people who speak to their computer can say it.
-	seen := slices.Clone(s.names)
-	if r != nil {
-		seen = append(seen, r.voltage, r.current)
-	}
-	words := append(make([]string, 0, 8), strings.Join(seen, " "), s.part.Kind.Title)
+	words := append(make([]string, 0, 8), s.names[0], s.part.Kind.Title)
+	words = append(words, s.names[1:]...)
 	if s.part.Kind.Positions != nil {
 		if !s.look.Values.Has("positions") {
 			words = append(words, s.look.Position)
@@ -74,6 +69,9 @@ func (s *symbol) spoken(r *reading) string {
 		} else {
 			words = append(words, "open")
 		}
+	}
+	if r != nil {
+		words = append(words, r.voltage, r.current)
 	}
 	return strings.Join(words, ", ")
 }

@@ -2,6 +2,7 @@ package draw
 
 import (
 	"math"
+	"sync"
 
 	"loopwright/schematic/stroke"
 )
@@ -237,19 +238,14 @@ func (s *symbol) byHand(l *labels, o *obstacles) placement {
 // led places a block further out, at the nearest free place, with a line that leads to its symbol. A line that covers
 // nothing is preferred. Where the paper is full, the block stands beside its symbol over what is there.
 func (s *symbol) led(b *block, o *obstacles, taken *stroke.Box) placement {
-	const directions, reach = 24, 16.0
+	const first, reach, further = 1.5, 10.5, 1.0
 	center := s.middle()
 	var second *placement
-	for radius := 1.5; radius <= reach; radius += 0.75 {
-		for i := range directions {
-			// Beginning at the right and going to either side in turn.
-			angle := float64((i+1)/2) * 360 / directions
-			if i%2 == 1 {
-				angle = -angle
-			}
-			p := onCircle(center, radius, angle)
+	for radius := first; radius <= reach; radius += further {
+		for _, way := range ledWays() {
+			p := stroke.Point{X: center.X + radius*way.X, Y: center.Y + radius*way.Y}
 			at := spot{p.X, p.Y - b.height/2, stroke.Start}
-			if math.Cos(angle*math.Pi/180) < -1e-9 {
+			if way.X < -1e-9 {
 				at = spot{p.X - b.width, at.top, stroke.End}
 			}
 			box := b.box(at)
@@ -274,6 +270,18 @@ func (s *symbol) led(b *block, o *obstacles, taken *stroke.Box) placement {
 	}
 	return one(b, s.beside(b, s.sides()[1], 0))
 }
+
+// ledWays are 24 directions of length 1, beginning at the right and going to either side in turn.
+var ledWays = sync.OnceValue(func() (ways [24]stroke.Point) {
+	for i := range ways {
+		angle := float64((i+1)/2) * 360 / float64(len(ways))
+		if i%2 == 1 {
+			angle = -angle
+		}
+		ways[i] = onCircle(stroke.Point{}, 1, angle)
+	}
+	return ways
+})
 
 // leader is the line from the box of a block to its symbol.
 func (s *symbol) leader(box stroke.Box) []stroke.Point {
