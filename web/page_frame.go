@@ -29,9 +29,12 @@ type piece struct {
 // newFrame cuts a page into its pieces.
 func newFrame(ctx context.Context, picture *draw.Picture, sheet *view.Sheet) (*frame, error) {
 	f := &frame{revision: sheet.Revision, groups: make([]piece, len(picture.Groups))}
+	// One buffer for all groups: most are far smaller than this, and growing each by itself costs more than drawing it.
+	buffer := make([]byte, 0, 1200*len(picture.Groups))
 	for i := range picture.Groups {
-		group := &picture.Groups[i]
-		f.groups[i] = piece{group.ID, group.AppendSVG(nil)}
+		start := len(buffer)
+		buffer = picture.Groups[i].AppendSVG(buffer)
+		f.groups[i] = piece{picture.Groups[i].ID, buffer[start:len(buffer):len(buffer)]}
 	}
 	for _, region := range []struct {
 		id        string

@@ -243,29 +243,35 @@ func TestARefusedEditSaysWhyAndChangesNothing(t *testing.T) {
 	}
 }
 
-// ladder is a control circuit of 200 parts: a supply between two rails and rungs of a switch, a resistor and a lamp.
+// ladder is a control circuit of 200 parts on A1: a supply, and four banks of rungs between rails of one name, each rung
+// with a switch, a resistor and a lamp.
 func ladder() string {
 	sheet := schematic.New("Ladder")
 	sheet.Size = "A1"
-	const rungs, pitch, top, bottom = 66, 8, 4, 30
-	part := func(kind *kinds.Kind, ref string, x, y int) {
-		sheet.Parts = append(sheet.Parts, schematic.Part{Ref: ref, Kind: kind, At: schematic.Point{X: x, Y: y}})
+	const banks, rungs, pitch, height = 4, 16, 9, 26
+	part := func(kind *kinds.Kind, ref string, x, y int, values kinds.Values) {
+		sheet.Parts = append(sheet.Parts, schematic.Part{Ref: ref, Kind: kind, At: schematic.Point{X: x, Y: y}, Values: values})
 	}
 	wire := func(points ...schematic.Point) {
 		sheet.Wires = append(sheet.Wires, schematic.Wire{ID: fmt.Sprintf("w%d", len(sheet.Wires)+1), Points: points})
 	}
-	const last = pitch * rungs
-	part(kinds.DCSupply, "G1", 0, 15)
-	part(kinds.Earth, "V1", 2, bottom)
-	wire(schematic.Point{X: 0, Y: 13}, schematic.Point{X: 0, Y: top}, schematic.Point{X: last, Y: top})
-	wire(schematic.Point{X: 0, Y: 17}, schematic.Point{X: 0, Y: bottom}, schematic.Point{X: last, Y: bottom})
-	for i := 1; i <= rungs; i++ {
-		x := pitch * i
-		part(kinds.Switch, fmt.Sprintf("S%d", i), x, 9)
-		part(kinds.Resistor, fmt.Sprintf("R%d", i), x, 17)
-		part(kinds.Lamp, fmt.Sprintf("P%d", i), x, 25)
-		for _, y := range [][2]int{{top, 7}, {11, 15}, {19, 23}, {27, bottom}} {
-			wire(schematic.Point{X: x, Y: y[0]}, schematic.Point{X: x, Y: y[1]})
+	part(kinds.DCSupply, "G1", 4, 12, nil)
+	wire(schematic.Point{X: 4, Y: 10}, schematic.Point{X: 4, Y: 2})
+	wire(schematic.Point{X: 4, Y: 14}, schematic.Point{X: 4, Y: 24})
+	for bank := range banks {
+		top, bottom := 2+height*bank, 24+height*bank
+		part(kinds.Potential, fmt.Sprintf("V%d", 2*bank+1), 4, top, kinds.Values{"name": kinds.Word(kinds.Text, "L+")})
+		part(kinds.Potential, fmt.Sprintf("V%d", 2*bank+2), 4, bottom, nil)
+		wire(schematic.Point{X: 4, Y: top}, schematic.Point{X: 4 + pitch*rungs, Y: top})
+		wire(schematic.Point{X: 4, Y: bottom}, schematic.Point{X: 4 + pitch*rungs, Y: bottom})
+		for i := 1; i <= rungs; i++ {
+			x, number := 4+pitch*i, bank*rungs+i
+			part(kinds.Switch, fmt.Sprintf("S%d", number), x, top+5, nil)
+			part(kinds.Resistor, fmt.Sprintf("R%d", number), x, top+11, nil)
+			part(kinds.Lamp, fmt.Sprintf("P%d", number), x, top+17, nil)
+			for _, y := range [][2]int{{0, 3}, {7, 9}, {13, 15}, {19, 22}} {
+				wire(schematic.Point{X: x, Y: top + y[0]}, schematic.Point{X: x, Y: top + y[1]})
+			}
 		}
 	}
 	return string(schematic.Encode(sheet))
