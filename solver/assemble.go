@@ -24,6 +24,9 @@ func (p *Plan[T]) solution(s *meshSystem[T], laws []Law[T], split *pieces) *Solu
 		}
 	}
 	p.nodeVoltages(solution, split)
+	for _, values := range [][]T{solution.Mesh, solution.Current, solution.Voltage, solution.Node} {
+		dropSignOfZero(values)
+	}
 	solution.Supermeshes = supermeshes(n, p.through, laws)
 	return solution
 }
@@ -41,18 +44,22 @@ func zeroBelow(refinement sparse.Refinement) float64 {
 	return max(nothing*refinement.Size, 16*refinement.Error)
 }
 
+// currentOrZero is the current of a branch in units of 1 V / ohms, and the sum of the magnitudes that it is made of.
+func (s *meshSystem[T]) currentOrZero(b int) (j T, total float64) {
+	through, _ := s.through.of(b)
+	for _, m := range through {
+		total += magnitude(s.x[m].Value)
+	}
+	return orZero(s.current(b).Round(), max(negligible*total, s.zero)), total
+}
+
 // differenceOnly is how small a current must be against its mesh currents to be taken from the voltage instead, where the
 // law allows that.
 const differenceOnly = 0x1p-50
 
 // branch gives current and voltage of a branch. What its law gives directly is taken from there.
 func (s *meshSystem[T]) branch(b int, law *Law[T]) (j, u T) {
-	through, _ := s.through.of(b)
-	total := 0.0
-	for _, m := range through {
-		total += magnitude(s.x[m].Value)
-	}
-	j = orZero(s.current(b).Round(), max(negligible*total, s.zero))
+	j, total := s.currentOrZero(b)
 	u = orZero(s.voltage(b, law).Round(), s.zero)
 	small := magnitude(j) <= differenceOnly*total
 	j = scaled(j, 1/s.ohms)

@@ -113,6 +113,17 @@ func TestAnAuditFindsEveryKindOfError(t *testing.T) {
 	}
 }
 
+func TestNoZeroHasASign(t *testing.T) {
+	s := solve(t, network(emf(1, 0, -24), open(1, 2), ohms(2, 0, 10), ohms(2, 3, 5), ohms(3, 0, 5), open(0, 3)))
+	for _, values := range [][]float64{s.Mesh, s.Current, s.Voltage, s.Node} {
+		for k, x := range values {
+			if x == 0 && math.Signbit(x) {
+				t.Errorf("value %d of %v is −0", k, values)
+			}
+		}
+	}
+}
+
 func TestACaseWithoutAnyCurrentPassesItsAuditWithZeros(t *testing.T) {
 	s := solve(t, network(emf(1, 0, 24), open(1, 2), ohms(2, 0, 10)))
 	if s.Audit != (solver.Audit{Passed: true}) {

@@ -33,33 +33,35 @@ func (p *Plan[T]) Respond(b int) (*Response[T], error) {
 		}
 	}
 	x := make([]wide.Number[T], len(right))
-	s.factor.SolveRefined(s.matrix, x, right)
-	return p.response(s, b, x), nil
+	refinement := s.factor.SolveRefined(s.matrix, x, right)
+	solved, zero := s.x, s.zero
+	s.x, s.zero = x, zeroBelow(refinement)
+	response := p.response(s, b)
+	s.x, s.zero = solved, zero
+	return response, nil
 }
 
 // response turns the change of the unknowns into that of all values.
-func (p *Plan[T]) response(s *meshSystem[T], b int, x []wide.Number[T]) *Response[T] {
+func (p *Plan[T]) response(s *meshSystem[T], b int) *Response[T] {
 	n := p.network
 	response := &Response[T]{
 		Mesh: make([]T, len(n.Meshes)), Current: make([]T, len(s.row)), Voltage: make([]T, len(s.row)), Node: make([]T, n.Nodes),
 	}
 	for m := range response.Mesh {
-		response.Mesh[m] = scaled(x[m].Round(), 1/s.ohms)
+		response.Mesh[m] = scaled(orZero(s.x[m].Round(), s.zero), 1/s.ohms)
 	}
-	solved := s.x
-	s.x = x
 	for k := range s.row {
 		if p.split.cut[k] {
 			continue
 		}
-		response.Current[k] = scaled(s.current(k).Round(), 1/s.ohms)
+		j, _ := s.currentOrZero(k)
+		response.Current[k] = scaled(j, 1/s.ohms)
 		if r := s.row[k]; r >= 0 {
-			response.Voltage[k] = x[len(n.Meshes)+r].Round()
+			response.Voltage[k] = orZero(s.x[len(n.Meshes)+r].Round(), s.zero)
 		} else {
 			response.Voltage[k] = -p.laws[k].Alpha * response.Current[k]
 		}
 	}
-	s.x = solved
 	if s.row[b] < 0 {
 		response.Voltage[b] += 1
 	}
@@ -194,10 +196,12 @@ func (p *Plan[T]) WithLaw(last *Solution[T], b int, law Law[T], response *Respon
 	return &next, true
 }
 
+// moved is from + by·direction; what cancels to rounding is zero.
 func moved[T Scalar](from, direction []T, by T) []T {
 	to := make([]T, len(from))
 	for k := range to {
-		to[k] = from[k] + by*direction[k]
+		step := by * direction[k]
+		to[k] = orZero(from[k]+step, 64*epsilon*magnitude(step))
 	}
 	return to
 }

@@ -78,3 +78,11 @@ func orZero[T Scalar](x T, limit float64) T {
 	}
 	return x
 }
+
+// dropSignOfZero turns −0 into 0, also in the parts of complex numbers, so that it is never printed.
+func dropSignOfZero[T Scalar](values []T) {
+	var zero T
+	for k := range values {
+		values[k] += zero
+	}
+}
