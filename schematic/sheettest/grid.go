@@ -4,6 +4,7 @@ package sheettest
 
 import (
 	"fmt"
+	"math/rand/v2"
 
 	"loopwright/schematic"
 	"loopwright/schematic/kinds"
@@ -85,6 +86,43 @@ func Grid(columns, rows int) *schematic.Sheet {
 			if column+1 < columns {
 				b.Right(kinds.Resistor, nil, column, row, false)
 			}
+		}
+	}
+	return b.Sheet
+}
+
+// Rungs is a supply and a number of rungs of a switch and a lamp, each between the rails L+ and 0V, which are joined by name
+// alone.
+func Rungs(rungs int) *schematic.Sheet {
+	b := NewBuilder("Rungs")
+	rail := func(name string, at schematic.Point) {
+		b.Part(kinds.Potential, kinds.Values{"name": kinds.Word(kinds.Text, name)}, at, 0)
+	}
+	for rung := range rungs + 1 {
+		column, row := rung%20, 3*(rung/20)
+		rail("L+", b.Node(column, row))
+		rail("0V", b.Node(column, row+2))
+		if rung == 0 {
+			b.Down(kinds.DCSupply, nil, column, row, false)
+			b.Wire(b.Node(column, row+1), b.Node(column, row+2))
+			continue
+		}
+		b.Down(kinds.Switch, nil, column, row, false)
+		b.Down(kinds.Lamp, nil, column, row+1, false)
+	}
+	return b.Sheet
+}
+
+// Tangle is a number of resistors, each between two of a number of nodes that are joined by name alone.
+func Tangle(resistors, nodes int) *schematic.Sheet {
+	b := NewBuilder("Tangle")
+	random := rand.New(rand.NewPCG(1, 2))
+	for i := range resistors {
+		column, row := i%50, 2*(i/50)
+		b.Down(kinds.Resistor, nil, column, row, false)
+		for end := range 2 {
+			name := fmt.Sprint("N", random.IntN(nodes))
+			b.Part(kinds.Potential, kinds.Values{"name": kinds.Word(kinds.Text, name)}, b.Node(column, row+end), 0)
 		}
 	}
 	return b.Sheet

@@ -1,5 +1,7 @@
 package trace
 
+import "math/bits"
+
 // classes tells closed ways apart, but for the drawn meshes: two of them are of one class when they differ by a sum of drawn
 // meshes, over the field of two elements. A class is a list of as many bits as meshes are missing.
 type classes struct {
@@ -71,27 +73,23 @@ func (f *faces) giveUp() (order, given []int) {
 	return order, given
 }
 
-// basis holds independent classes.
-type basis struct {
-	rows [][]uint64 // by the first bit that is set
-	size int
-}
-
-func newBasis(bits int) *basis { return &basis{rows: make([][]uint64, bits)} }
+// basis holds independent classes, each at the first bit that it has set.
+type basis [][]uint64
 
 // add takes a class into the basis and reports whether it was independent of those before. It changes its argument.
-func (b *basis) add(class []uint64) bool {
-	for bit := range b.rows {
-		if class[bit/64]&(1<<(bit%64)) == 0 {
+func (b basis) add(class []uint64) bool {
+	for i := 0; i < len(class); {
+		if class[i] == 0 {
+			i++
 			continue
 		}
-		if b.rows[bit] == nil {
-			b.rows[bit] = class
-			b.size++
+		bit := 64*i + bits.TrailingZeros64(class[i])
+		if b[bit] == nil {
+			b[bit] = class
 			return true
 		}
-		for i, word := range b.rows[bit] {
-			class[i] ^= word
+		for k := i; k < len(class); k++ {
+			class[k] ^= b[bit][k]
 		}
 	}
 	return false

@@ -10,7 +10,6 @@ type loop struct {
 	steps    []Step
 	place    int   // the first place in reading order of its pins
 	branches []int // ascending
-	class    []uint64
 }
 
 // loops completes the drawn meshes with as many loops as are missing: the shortest ones, counted in branches, that are
@@ -20,7 +19,7 @@ type loop struct {
 // Among the loops that consist of two shortest ways from a root and a branch between their ends are the shortest of each
 // class that is not a sum of shorter ones, whichever shortest ways are taken (Horton, "A polynomial-time algorithm to find
 // the shortest cycle basis of a graph", SIAM Journal on Computing 16, 1987), and it is enough to take as roots potentials
-// of which every loop has one.
+// of which every loop of a class has one.
 func (d *Drawing) loops(f *faces, missing int) [][]Step {
 	s := newLoopSearch(d, d.newClasses(f, missing), missing)
 	for b, branch := range d.Branches {
@@ -28,34 +27,43 @@ func (d *Drawing) loops(f *faces, missing int) [][]Step {
 			s.consider([]Step{{b, 1}})
 		}
 	}
-	for _, root := range d.roots(s.needed()) {
-		s.from(root)
-	}
 	s.choose()
-	slices.SortFunc(s.found, func(a, b loop) int { return cmp.Or(cmp.Compare(a.place, b.place), compareLoops(a, b)) })
-	list := make([][]Step, len(s.found))
-	for i, found := range s.found {
-		list[i] = d.forward(found.steps)
+	roots := d.roots(s.classes)
+	next := make([]int, len(roots)) // the length from which on the loops around each root were not considered yet
+	for length := 2; length <= len(d.Branches) && len(s.chosen) < missing; {
+		longer := len(d.Branches) + 1
+		for i, root := range roots {
+			if next[i] <= length {
+				next[i] = s.around(root, length)
+			}
+			longer = min(longer, next[i])
+		}
+		s.choose()
+		length = longer
+	}
+	slices.SortFunc(s.chosen, func(a, b loop) int {
+		return cmp.Or(cmp.Compare(a.place, b.place), cmp.Compare(len(a.steps), len(b.steps)), slices.Compare(a.branches, b.branches))
+	})
+	list := make([][]Step, len(s.chosen))
+	for i, chosen := range s.chosen {
+		list[i] = d.forward(chosen.steps)
 	}
 	return list
 }
 
-func compareLoops(a, b loop) int {
-	return cmp.Or(cmp.Compare(len(a.steps), len(b.steps)), cmp.Compare(a.place, b.place), slices.Compare(a.branches, b.branches))
-}
-
-// loopSearch looks for loops around one root after another.
+// loopSearch looks for loops of one length after another.
 type loopSearch struct {
 	d       *Drawing
 	classes *classes
-	missing int
-	found   []loop // those that may still be chosen
-	longest int    // once enough independent loops are found, a longer one than the longest of them is of no use
+	chosen  []loop
+	basis   basis  // of the chosen loops
+	found   []loop // all of one length
 
 	at      [][]int
 	reached []int
 	depth   []int
-	seen    []int // the root from which a potential was reached last, plus one
+	seen    []int // the search in which a potential was reached last
+	search  int
 	step    []Step
 	twig    []int    // the first potential after the root on the way
 	label   []uint64 // the class of the way
@@ -64,66 +72,53 @@ type loopSearch struct {
 func newLoopSearch(d *Drawing, c *classes, missing int) *loopSearch {
 	n := len(d.Potentials)
 	return &loopSearch{
-		d: d, classes: c, missing: missing, longest: len(d.Branches) + 1, at: d.branchesAt(),
+		d: d, classes: c, basis: make(basis, missing), at: d.branchesAt(),
 		depth: make([]int, n), seen: make([]int, n), step: make([]Step, n), twig: make([]int, n), label: make([]uint64, n*c.words),
 	}
 }
 
-// needed marks the branches of those components that lack a mesh.
-func (s *loopSearch) needed() []bool {
-	together := newSets(len(s.d.Potentials))
-	for _, branch := range s.d.Branches {
-		together.union(branch.From, branch.To)
-	}
-	lacks := make([]bool, len(s.d.Potentials))
-	for b, branch := range s.d.Branches {
-		if slices.ContainsFunc(s.classes.of(b), func(word uint64) bool { return word != 0 }) {
-			lacks[together.find(branch.From)] = true
-		}
-	}
-	needed := make([]bool, len(s.d.Branches))
-	for b, branch := range s.d.Branches {
-		needed[b] = lacks[together.find(branch.From)]
-	}
-	return needed
-}
-
-// from considers all loops around a root.
-func (s *loopSearch) from(root int) {
+// around considers all loops of one length around a root, and gives the length of the next longer ones.
+func (s *loopSearch) around(root, length int) (next int) {
 	s.spread(root)
+	next = len(s.d.Branches) + 1
 	for _, near := range s.reached {
 		for _, b := range s.at[near] {
-			branch := &s.d.Branches[b]
-			if branch.From != near || s.seen[branch.To] != root+1 || s.twig[near] == s.twig[branch.To] ||
-				s.step[near].Branch == b || s.step[branch.To].Branch == b ||
-				s.depth[near]+s.depth[branch.To]+1 > s.longest || !s.useful(b, near, branch.To) {
+			from, to := s.d.Branches[b].From, s.d.Branches[b].To
+			if from != near || s.twig[from] == s.twig[to] || s.step[from].Branch == b || s.step[to].Branch == b {
 				continue
 			}
-			s.consider(s.around(b, root))
+			long := s.depth[from] + s.depth[to] + 1
+			if long < length || long >= next || !s.useful(b, from, to) {
+				continue
+			}
+			if long > length {
+				next = long
+			} else {
+				s.consider(s.through(b, root))
+			}
 		}
 	}
+	return next
 }
 
-// spread finds shortest ways from a root to all potentials that can be on a loop that is short enough.
+// spread finds shortest ways from a root to all potentials of its component.
 func (s *loopSearch) spread(root int) {
 	w := s.classes.words
+	s.search++
 	s.reached = append(s.reached[:0], root)
-	s.seen[root], s.depth[root], s.twig[root], s.step[root] = root+1, 0, -1, Step{Branch: -1}
+	s.seen[root], s.depth[root], s.twig[root], s.step[root] = s.search, 0, -1, Step{Branch: -1}
 	clear(s.label[root*w : (root+1)*w])
 	for i := 0; i < len(s.reached); i++ {
 		near := s.reached[i]
-		if 2*s.depth[near] >= s.longest {
-			return
-		}
 		for _, b := range s.at[near] {
 			next, sense := s.d.Branches[b].To, 1
 			if next == near {
 				next, sense = s.d.Branches[b].From, -1
 			}
-			if s.seen[next] == root+1 {
+			if s.seen[next] == s.search {
 				continue
 			}
-			s.seen[next], s.depth[next], s.step[next] = root+1, s.depth[near]+1, Step{b, sense}
+			s.seen[next], s.depth[next], s.step[next] = s.search, s.depth[near]+1, Step{b, sense}
 			if s.twig[next] = s.twig[near]; near == root {
 				s.twig[next] = next
 			}
@@ -145,8 +140,8 @@ func (s *loopSearch) useful(b, from, to int) bool {
 	return false
 }
 
-// around gives the loop that leaves the root towards the first end of a branch and comes back from the other.
-func (s *loopSearch) around(b, root int) []Step {
+// through gives the loop that leaves the root towards the first end of a branch and comes back from the other.
+func (s *loopSearch) through(b, root int) []Step {
 	var steps []Step
 	for at := s.d.Branches[b].From; at != root; {
 		step := s.step[at]
@@ -173,29 +168,39 @@ func (s *loopSearch) before(step Step) int {
 
 // consider takes a loop among those that may be chosen.
 func (s *loopSearch) consider(steps []Step) {
-	found := loop{steps: steps, place: len(s.d.Joins.Places), class: make([]uint64, s.classes.words)}
-	for _, step := range steps {
+	found := loop{steps: steps, place: len(s.d.Joins.Places), branches: make([]int, len(steps))}
+	for i, step := range steps {
 		from, to := s.d.ends(step.Branch)
 		found.place = min(found.place, from, to)
-		found.branches = append(found.branches, step.Branch)
-		s.classes.add(found.class, step.Branch)
+		found.branches[i] = step.Branch
 	}
 	slices.Sort(found.branches)
 	s.found = append(s.found, found)
-	if len(s.found) > 2*s.missing+256 {
-		s.choose()
+	if len(s.found) > 4*len(s.basis)+1024 {
+		s.found = s.independent(slices.Clone(s.basis))
 	}
 }
 
-// choose keeps the best independent loops of those that were found. Choosing now and again on the way gives the same as
-// choosing once at the end.
+// choose takes the best independent loops of those that were found.
 func (s *loopSearch) choose() {
-	slices.SortFunc(s.found, compareLoops)
-	chosen := newBasis(s.missing)
-	s.found = slices.DeleteFunc(s.found, func(found loop) bool { return !chosen.add(slices.Clone(found.class)) })
-	if chosen.size == s.missing {
-		s.longest = len(s.found[len(s.found)-1].steps)
-	}
+	s.chosen = append(s.chosen, s.independent(s.basis)...)
+	s.found = nil
+}
+
+// independent gives, of the loops that were found, those that are independent of a basis and of better ones, and adds
+// them to the basis. Doing so now and again with what was found so far gives the same as doing it once with all.
+func (s *loopSearch) independent(of basis) []loop {
+	slices.SortFunc(s.found, func(a, b loop) int {
+		return cmp.Or(cmp.Compare(a.place, b.place), slices.Compare(a.branches, b.branches))
+	})
+	list := slices.CompactFunc(s.found, func(a, b loop) bool { return slices.Equal(a.branches, b.branches) })
+	return slices.DeleteFunc(list, func(found loop) bool {
+		class := make([]uint64, s.classes.words)
+		for _, b := range found.branches {
+			s.classes.add(class, b)
+		}
+		return !of.add(class)
+	})
 }
 
 // forward turns a loop so that it runs its first source, in the order of the parts, the way the source delivers; a loop

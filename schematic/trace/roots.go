@@ -1,33 +1,37 @@
 package trace
 
-// roots chooses potentials such that every closed way of more than one branch runs through one of them. They are few where
-// much hangs on few potentials, as on the rails of a control circuit. Circuits whose meshes are all drawn are left out:
-// needed tells which branches count.
+import "slices"
+
+// roots chooses potentials such that every closed way of more than one branch runs through one of them, except for ways
+// that are sums of drawn meshes whatever happens. They are few where much hangs on few potentials, as on the rails of a
+// control circuit, and where few meshes are not drawn.
 //
-// As long as there are closed ways left, the potential with the most branches is taken out, and then all that lies on
-// none any more.
-func (d *Drawing) roots(needed []bool) []int {
-	p := peeling{d: d, degree: make([]int, len(d.Potentials)), gone: make([]bool, len(d.Branches)), at: d.branchesAt()}
+// A way of a class needs a branch of a class. So as long as there are closed ways with such branches left, the potential at
+// which most of those branches meet is taken out, and then all that lies on no closed way any more.
+func (d *Drawing) roots(c *classes) []int {
+	p := peeling{
+		d: d, at: d.branchesAt(), gone: make([]bool, len(d.Branches)), telling: make([]bool, len(d.Branches)),
+		degree: make([]int, len(d.Potentials)), told: make([]int, len(d.Potentials)),
+	}
 	for b, branch := range d.Branches {
-		if !needed[b] || branch.From == branch.To {
-			p.gone[b] = true
+		if p.gone[b] = branch.From == branch.To; p.gone[b] {
 			continue
 		}
-		p.degree[branch.From]++
-		p.degree[branch.To]++
+		p.telling[b] = slices.ContainsFunc(c.of(b), func(word uint64) bool { return word != 0 })
+		p.count(b, 1)
 	}
 	for i := range p.degree {
 		p.peel(i)
 	}
 	var roots []int
 	for {
-		root := -1
-		for i, degree := range p.degree {
-			if degree > 0 && (root < 0 || degree > p.degree[root]) {
+		root := 0
+		for i, told := range p.told {
+			if told > p.told[root] {
 				root = i
 			}
 		}
-		if root < 0 {
+		if p.told[root] == 0 {
 			return roots
 		}
 		roots = append(roots, root)
@@ -35,39 +39,50 @@ func (d *Drawing) roots(needed []bool) []int {
 	}
 }
 
+// peeling takes potentials and branches out of a circuit.
 type peeling struct {
-	d      *Drawing
-	degree []int
-	gone   []bool  // branches
-	at     [][]int // branches at each potential
+	d       *Drawing
+	at      [][]int // branches at each potential
+	gone    []bool  // branches
+	telling []bool  // branches that have a class
+	degree  []int   // how many branches are left at each potential
+	told    []int   // how many of them have a class
+}
+
+// count adds a branch to those that are left at its ends, or takes it away.
+func (p *peeling) count(b, sign int) {
+	for _, end := range [2]int{p.d.Branches[b].From, p.d.Branches[b].To} {
+		p.degree[end] += sign
+		if p.telling[b] {
+			p.told[end] += sign
+		}
+	}
 }
 
 // remove takes a potential out with its branches, and whatever then lies on no closed way.
 func (p *peeling) remove(potential int) {
 	for _, b := range p.at[potential] {
-		if p.gone[b] {
-			continue
+		if !p.gone[b] {
+			p.gone[b] = true
+			p.count(b, -1)
+			p.peel(p.other(b, potential))
 		}
-		p.gone[b] = true
-		other := p.d.Branches[b].From + p.d.Branches[b].To - potential
-		p.degree[potential]--
-		p.degree[other]--
-		p.peel(other)
 	}
+}
+
+// other is the end of a branch that is not the given one.
+func (p *peeling) other(b, potential int) int {
+	return p.d.Branches[b].From + p.d.Branches[b].To - potential
 }
 
 // peel takes a potential out when only one branch is left there, and goes on along it.
 func (p *peeling) peel(potential int) {
 	for p.degree[potential] == 1 {
-		for _, b := range p.at[potential] {
-			if !p.gone[b] {
-				p.gone[b] = true
-				p.degree[potential]--
-				potential = p.d.Branches[b].From + p.d.Branches[b].To - potential
-				p.degree[potential]--
-				break
-			}
-		}
+		last := slices.IndexFunc(p.at[potential], func(b int) bool { return !p.gone[b] })
+		b := p.at[potential][last]
+		p.gone[b] = true
+		p.count(b, -1)
+		potential = p.other(b, potential)
 	}
 }
 
