@@ -11,6 +11,11 @@ import (
 // segment is a straight line that a mesh arrow must keep clear of.
 type segment struct{ a, b stroke.Point }
 
+// meets reports whether the box around a segment touches a box.
+func (s *segment) meets(box stroke.Box) bool {
+	return min(s.a.X, s.b.X) <= box.Right && max(s.a.X, s.b.X) >= box.Left && min(s.a.Y, s.b.Y) <= box.Bottom && max(s.a.Y, s.b.Y) >= box.Top
+}
+
 // center finds for each drawn mesh the point that is farthest from all lines around and within it.
 func (f *faces) center(kept []*face, meshes []Mesh) {
 	loose := f.looseLines()
@@ -22,7 +27,7 @@ func (f *faces) center(kept []*face, meshes []Mesh) {
 		}
 		box := boxOf(outline)
 		for _, line := range loose {
-			if boxOf([]stroke.Point{line.a, line.b}).Grown(0.5).Overlaps(box) {
+			if line.meets(box) {
 				lines = append(lines, line)
 			}
 		}
