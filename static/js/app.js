@@ -6,7 +6,7 @@ import './share.js';
 import { page } from './page.js';
 import { refresh } from './card.js';
 import { history } from './keys.js';
-import { listen } from './live.js';
+import { keepUp } from './live.js';
 import { send } from './queue.js';
 import { mark, select, selectedParts, isSelected } from './selection.js';
 import { sheet } from './grid.js';
@@ -35,6 +35,6 @@ document.addEventListener('click', event => {
   if (row) select({ parts: [row.dataset.reading] });
 });
 
-listen();
+keepUp();
 if (selectedParts().length > 0) refresh();
 document.body.dataset.ready = '1';

@@ -28,17 +28,28 @@ async function catchUp() {
   if (page.revision > before) catchUp();
 }
 
-/** Listens for new revisions for as long as the page is open. */
-export function listen() {
-  const events = new EventSource(`/api/v1/sheets/${page.key}/events`);
+let events = null;
+
+// A hidden page does not listen: browsers allow few connections to one server, and whoever comes back catches up.
+function listen() {
+  events?.close();
+  events = null;
+  if (document.hidden) return;
+  events = new EventSource(`/api/v1/sheets/${page.key}/events`);
+  events.addEventListener('open', () => { if (!busy()) setState('saved'); });
   events.addEventListener('revision', event => {
     newest = Math.max(newest, JSON.parse(event.data).revision);
-    if (document.body.dataset.state === 'offline' && !busy()) setState('saved');
     catchUp();
   });
   events.addEventListener('error', () => {
     if (!busy()) setState('offline');
-    if (events.readyState === EventSource.CLOSED) setTimeout(listen, 5000);
+    if (events?.readyState === EventSource.CLOSED) setTimeout(listen, 5000);
   });
+}
+
+/** Keeps up with the sheet for as long as the page is open. */
+export function keepUp() {
+  document.addEventListener('visibilitychange', listen);
   document.addEventListener('loopwright:settled', catchUp);
+  listen();
 }

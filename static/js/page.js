@@ -12,7 +12,9 @@ export const page = {
   get shownCase() { return document.querySelector('[data-case][aria-current="true"]')?.dataset.case ?? ''; },
 };
 
-const words = { saved: 'Saved', saving: 'Saving', offline: 'Offline, your edits wait', stale: 'Catching up' };
+const words = data.role === 'edit'
+  ? { saved: 'Saved', saving: 'Saving', offline: 'Offline, your edits wait', stale: 'Catching up' }
+  : { saved: 'Live', saving: 'Live', offline: 'Offline', stale: 'Catching up' };
 
 /** @param {'saved'|'saving'|'offline'|'stale'} state where the last edit stands */
 export function setState(state) {

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"testing"
 
@@ -100,16 +101,16 @@ func (p *tab) hear(event any) {
 }
 
 // expectRefusal drops the console's notes of a refused request, which Chromium always writes.
-func (p *tab) expectRefusal() {
+func (p *tab) expectRefusal() { p.forgive("status of 4") }
+
+// expectOffline drops the console's notes of requests that found no network.
+func (p *tab) expectOffline() { p.forgive("ERR_INTERNET_DISCONNECTED") }
+
+// forgive drops the notes that hold a text.
+func (p *tab) forgive(text string) {
 	p.mu.Lock()
 	defer p.mu.Unlock()
-	kept := p.trouble[:0]
-	for _, line := range p.trouble {
-		if !strings.Contains(line, "status of 4") {
-			kept = append(kept, line)
-		}
-	}
-	p.trouble = kept
+	p.trouble = slices.DeleteFunc(p.trouble, func(line string) bool { return strings.Contains(line, text) })
 }
 
 func (p *tab) do(steps ...chromedp.Action[chromedp.Void]) {
