@@ -104,7 +104,10 @@ func (p *tab) hear(event any) {
 func (p *tab) expectRefusal() { p.forgive("status of 4") }
 
 // expectOffline drops the console's notes of requests that found no network.
-func (p *tab) expectOffline() { p.forgive("ERR_INTERNET_DISCONNECTED") }
+func (p *tab) expectOffline() {
+	p.forgive("ERR_INTERNET_DISCONNECTED")
+	p.forgive("Failed to fetch")
+}
 
 // forgive drops the notes that hold a text.
 func (p *tab) forgive(text string) {
