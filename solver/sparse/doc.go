@@ -20,9 +20,6 @@ import "math"
 // Scalar is the type of the entries.
 type Scalar interface{ float64 | complex128 }
 
-// epsilon is the distance from 1 to the next larger float64.
-const epsilon = 0x1p-52
-
 const errLength = "sparse: length does not match the matrix"
 
 // Magnitude is |x| of a real number and |Re x| + |Im x| of a complex one: within √2 of |x|, and much cheaper.

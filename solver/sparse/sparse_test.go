@@ -2,7 +2,6 @@ package sparse_test
 
 import (
 	"context"
-	"fmt"
 	"math"
 	"math/rand/v2"
 	"testing"
@@ -234,88 +233,5 @@ func TestRefinedSolutionsAreExactThoughTheMatrixIsIllConditioned(t *testing.T) {
 	}
 	if hardest < 1e9 {
 		t.Errorf("the hardest matrix has the condition %g: the test asks for too little", hardest)
-	}
-}
-
-// grid is the Laplacian of a side×side grid, grounded at a corner: the mesh equations of a grid of resistors.
-func grid(side int) *sparse.Matrix[float64] {
-	var rows, columns []int
-	var values []float64
-	put := func(i, j int, value float64) {
-		rows, columns, values = append(rows, i), append(columns, j), append(values, value)
-	}
-	for k := range side * side {
-		put(k, k, 4)
-		if k%side+1 < side {
-			put(k, k+1, -1)
-			put(k+1, k, -1)
-		}
-		if k+side < side*side {
-			put(k, k+side, -1)
-			put(k+side, k, -1)
-		}
-	}
-	pattern, slot := sparse.NewPattern(side*side, rows, columns)
-	a := sparse.NewMatrix[float64](pattern)
-	for k, s := range slot {
-		a.Value[s] += values[k]
-	}
-	return a
-}
-
-func BenchmarkFactorGrid(b *testing.B) {
-	for _, side := range []int{10, 30, 100} {
-		a := grid(side)
-		for _, order := range analyses() {
-			b.Run(fmt.Sprintf("%s/%d", order.name, side*side), func(b *testing.B) {
-				symbolic, err := order.analyze(context.Background(), a.Pattern)
-				if err != nil {
-					b.Fatal(err)
-				}
-				lu := sparse.NewLU[float64](symbolic)
-				for b.Loop() {
-					if err := lu.Factor(context.Background(), a, sparse.Lenient); err != nil {
-						b.Fatal(err)
-					}
-				}
-				b.ReportMetric(float64(lu.Fill()), "entries")
-			})
-		}
-	}
-}
-
-func BenchmarkRefactorGrid(b *testing.B) {
-	for _, side := range []int{10, 30, 100} {
-		a := grid(side)
-		b.Run(fmt.Sprint(side*side), func(b *testing.B) {
-			symbolic, err := sparse.Analyze(context.Background(), a.Pattern, nil)
-			if err != nil {
-				b.Fatal(err)
-			}
-			lu := sparse.NewLU[float64](symbolic)
-			if err := lu.Factor(context.Background(), a, sparse.Lenient); err != nil {
-				b.Fatal(err)
-			}
-			for b.Loop() {
-				if !lu.Refactor(a) {
-					b.Fatal("the pivots do not fit")
-				}
-			}
-		})
-	}
-}
-
-func BenchmarkAnalyzeGrid(b *testing.B) {
-	for _, side := range []int{10, 30, 100} {
-		a := grid(side)
-		for _, order := range analyses() {
-			b.Run(fmt.Sprintf("%s/%d", order.name, side*side), func(b *testing.B) {
-				for b.Loop() {
-					if _, err := order.analyze(context.Background(), a.Pattern); err != nil {
-						b.Fatal(err)
-					}
-				}
-			})
-		}
 	}
 }
