@@ -5,30 +5,31 @@ package solver
 type cutGraph[T Scalar] struct {
 	network *Network[T]
 	laws    []Law[T]
-	lump    *groups
+	lump    *groups         // nil when no source drives anything
 	sum     map[int]T       // current driven out of a lump by the sources that leave it, by representative
 	total   map[int]float64 // sum of their magnitudes
 	sources map[int]int     // their number, without those of 0 A
 }
 
 func newCutGraph[T Scalar](n *Network[T], laws []Law[T]) *cutGraph[T] {
-	g := &cutGraph[T]{network: n, laws: laws, lump: newGroups(n.Nodes)}
-	driving := false
+	g := &cutGraph[T]{network: n, laws: laws}
 	for b := range laws {
-		if !g.source(b) {
-			g.lump.join(n.Branches[b].From, n.Branches[b].To)
-		} else if laws[b].Gamma != 0 {
-			driving = true
+		if g.source(b) && laws[b].Gamma != 0 {
+			g.add()
+			break
 		}
-	}
-	if driving {
-		g.add()
 	}
 	return g
 }
 
-// add sums what the sources that leave each lump drive out of it.
+// add finds the lumps and sums what the sources that leave each of them drive out of it.
 func (g *cutGraph[T]) add() {
+	g.lump = newGroups(g.network.Nodes)
+	for b := range g.laws {
+		if !g.source(b) {
+			g.lump.join(g.network.Branches[b].From, g.network.Branches[b].To)
+		}
+	}
 	g.sum, g.total, g.sources = map[int]T{}, map[int]float64{}, map[int]int{}
 	for b := range g.laws {
 		from, to, crosses := g.crosses(b)
@@ -70,6 +71,9 @@ func (g *cutGraph[T]) undetermined() *Problem {
 }
 
 func (g *cutGraph[T]) smallest(code Code, accept func(lump int) bool) *Problem {
+	if g.lump == nil {
+		return nil
+	}
 	best := -1
 	for node := range g.network.Nodes {
 		lump := g.lump.of(node)

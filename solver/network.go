@@ -15,8 +15,8 @@ type Law[T Scalar] struct {
 	Terms []Term[T]
 
 	// Row keeps the law as a row of its own, and u as an unknown, whatever the law is. Set it for every branch that may
-	// switch, limit or bend, and set it the same in every case of a sheet: then all cases share one analysis. A law that
-	// sets the current, or that has Terms, is given its row anyway.
+	// switch, limit or bend, and set it the same in every case of a sheet: then all cases share one analysis. A law that is
+	// not of the form u − Z·j = E (Beta is 1, no Terms) is given its row anyway.
 	Row bool
 }
 

@@ -50,7 +50,8 @@ func lawsOf[T Scalar](n *Network[T]) []Law[T] {
 }
 
 // Prepare checks a network and orders its mesh equations. The laws of n decide which branches are given a row; a branch
-// with Law.Row set can take any law later, others must stay solvable for their voltage or cost a second layout.
+// with Law.Row set can take any law later, while others cost a second, larger layout when they no longer have the form
+// u − Z·j = E. The plan keeps n, whose graph and meshes must not change any more.
 func Prepare[T Scalar](ctx context.Context, n *Network[T]) (*Plan[T], error) {
 	if err := validate(n); err != nil {
 		return nil, err
@@ -94,11 +95,11 @@ func termBranches[T Scalar](law *Law[T]) []int {
 	return branches
 }
 
-// spreadLimit is how far apart impedances in one mesh equation may be: adding them loses this many units in the last place
-// of the smaller.
+// spreadLimit is how far apart impedances in one mesh equation may be. Adding them loses that part of the digits of the
+// smaller in the factors, which refinement then has to recover.
 const spreadLimit = 1e5
 
-// largeImpedance gives the impedance above which a branch is given a row.
+// largeImpedance gives the impedance above which a branch is given a row of its own.
 func largeImpedance[T Scalar](laws []Law[T]) float64 {
 	smallest := 0.0
 	for b := range laws {
