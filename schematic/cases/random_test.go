@@ -167,3 +167,15 @@ func TestMeshesHaveTheSameNamesInEveryCase(t *testing.T) {
 		}
 	})
 }
+
+func TestWhateverIsDrawnIsSolvedOrSaysWhyNot(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		b := sheettest.NewBuilder("Soup")
+		sheettest.Soup(t, b)
+		for _, c := range solveDrawn(t, b.Sheet).Cases {
+			if c.Solved != c.Audit.Passed || c.Solved != (c.Problem == nil) {
+				t.Fatalf("%+v", c)
+			}
+		}
+	})
+}

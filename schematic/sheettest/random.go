@@ -102,3 +102,33 @@ func Cases(sheet *schematic.Sheet) {
 		sheet.Cases = append(sheet.Cases, c)
 	}
 }
+
+// Soup throws parts and wires onto a small field, so that they cross, cover and touch one another in every way that a sheet
+// allows. The sheet passes Validate.
+func Soup(t *rapid.T, b *Builder) {
+	within := rapid.IntRange(0, 10)
+	list := []*kinds.Kind{kinds.Resistor, kinds.Switch, kinds.DCSupply, kinds.CurrentSource, kinds.Ammeter, kinds.Terminal, kinds.Potential, kinds.Earth}
+	for range rapid.IntRange(0, 10).Draw(t, "parts") {
+		at := schematic.Point{X: within.Draw(t, "x"), Y: within.Draw(t, "y")}
+		turn := 90 * rapid.IntRange(0, 3).Draw(t, "turn")
+		kind := list[rapid.IntRange(0, len(list)-1).Draw(t, "kind")]
+		b.Part(kind, kind.Tray[0].Values, at, turn)
+	}
+	for range rapid.IntRange(0, 8).Draw(t, "wires") {
+		at := schematic.Point{X: within.Draw(t, "x"), Y: within.Draw(t, "y")}
+		points := []schematic.Point{at}
+		for range rapid.IntRange(1, 4).Draw(t, "corners") {
+			by := rapid.SampledFrom([]int{-7, -3, -2, -1, 1, 2, 3, 7}).Draw(t, "by")
+			if rapid.Bool().Draw(t, "level") {
+				at.X += by
+			} else {
+				at.Y += by
+			}
+			points = append(points, at)
+		}
+		b.Wire(points...)
+		if schematic.Validate(b.Sheet) != nil { // the same wire twice
+			b.Sheet.Wires = b.Sheet.Wires[:len(b.Sheet.Wires)-1]
+		}
+	}
+}

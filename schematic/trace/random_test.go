@@ -190,3 +190,15 @@ func TestTheSameSheetAlwaysHasTheSameMeshes(t *testing.T) {
 		}
 	})
 }
+
+func TestWhateverIsDrawnHasItsMeshes(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		b := sheettest.NewBuilder("Soup")
+		sheettest.Soup(t, b)
+		d := trace.Trace(b.Sheet)
+		checkMeshes(t, d)
+		if len(d.Meshes) <= 10 {
+			checkShortest(t, d)
+		}
+	})
+}
