@@ -211,3 +211,17 @@ func TestMistakesOfTheCallerAreErrorsAndNotProblems(t *testing.T) {
 		}
 	}
 }
+
+// With v = a·(v1 − v3) and Kirchhoff's current law at the feedback point 3, by hand:
+//
+//	v = v1·a·(g1 + g2) / (g1 + g2 + g + a·g2)
+func TestAnAmplifierWithFeedbackHasItsClosedLoopGain(t *testing.T) {
+	for _, gain := range []float64{1e3, 1e6, 1e9, 1e12} {
+		s := solve(t, network(emf(1, 0, 0.1), ohms(1, 3, 1e7), vcvs(2, 0, 1, gain), ohms(2, 3, 9000), ohms(3, 0, 1000)))
+		g, g1, g2 := 1/1e7, 1/1000.0, 1/9000.0
+		want := 0.1 * gain * (g1 + g2) / (g1 + g2 + g + gain*g2)
+		if got := s.Node[2]; abs(got-want) > 1e-14*want {
+			t.Errorf("gain %g: %.15g V, want %.15g V", gain, got, want)
+		}
+	}
+}
