@@ -18,53 +18,55 @@ type results struct {
 	ran     int
 	failed  []string
 	skipped []string
-	output  map[string][]string // by package: what its tests have said so far
+	output  map[source][]string // what each test, and each package by itself, has said so far
 }
 
-func newResults() *results { return &results{output: map[string][]string{}} }
+// source is a test, or a package by itself when Test is empty.
+type source struct{ Package, Test string }
 
-// take takes one line and gives what is to be printed of it: nothing while a package runs; at its end go test's own
-// closing line, and before it the package's whole output when it failed. Lines that are no events are printed as they are.
+func newResults() *results { return &results{output: map[source][]string{}} }
+
+// take takes one line and gives what is to be printed of it: what a test said when it fails, and at the end of a package
+// go test's own closing line, or all that the package said by itself when it failed. Lines that are no events are printed
+// as they are.
 func (r *results) take(line []byte) string {
 	var e event
 	if json.Unmarshal(line, &e) != nil {
 		return string(line) + "\n"
 	}
-	if e.Action == "output" || e.Action == "build-output" {
-		r.output[e.Package] = append(r.output[e.Package], e.Output)
-		if e.Action == "build-output" {
-			return e.Output
-		}
-		return ""
-	}
-	if e.Test != "" {
-		r.count(e)
-		return ""
-	}
+	from := source{e.Package, e.Test}
 	switch e.Action {
-	case "pass", "skip":
-		closing := closingLine(r.output[e.Package])
-		delete(r.output, e.Package)
-		return closing
-	case "fail":
-		whole := strings.Join(r.output[e.Package], "")
-		delete(r.output, e.Package)
-		return whole
+	case "output":
+		r.output[from] = append(r.output[from], e.Output)
+		return ""
+	case "build-output":
+		return e.Output
+	case "pass", "skip", "fail":
+		said := r.output[from]
+		delete(r.output, from)
+		return r.ended(e, said)
 	}
 	return ""
 }
 
-func (r *results) count(e event) {
+// ended counts the end of a test or package, and gives what is to be printed of what it said.
+func (r *results) ended(e event, said []string) string {
 	name := e.Package + "." + e.Test
-	switch e.Action {
-	case "pass":
-		r.ran++
-	case "fail":
-		r.ran++
-		r.failed = append(r.failed, name)
-	case "skip":
+	switch {
+	case e.Test == "" && e.Action == "fail":
+		return strings.Join(said, "")
+	case e.Test == "":
+		return closingLine(said)
+	case e.Action == "skip":
 		r.skipped = append(r.skipped, name)
+		return ""
 	}
+	r.ran++
+	if e.Action == "fail" {
+		r.failed = append(r.failed, name)
+		return strings.Join(said, "")
+	}
+	return ""
 }
 
 // closingLine is the line with which go test ends a package.

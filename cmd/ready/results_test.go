@@ -30,8 +30,10 @@ func TestAPassingPackageIsOneClosingLine(t *testing.T) {
 	}
 }
 
-func TestAFailingPackageIsPrintedWhole(t *testing.T) {
+func TestOfAFailingPackageOnlyTheFailingTestsArePrinted(t *testing.T) {
 	r, printed := fold(
+		`{"Action":"output","Package":"p","Test":"TestB","Output":"=== RUN   TestB\n"}`,
+		`{"Action":"pass","Package":"p","Test":"TestB"}`,
 		`{"Action":"output","Package":"p","Test":"TestA","Output":"    a_test.go:1: wrong\n"}`,
 		`{"Action":"fail","Package":"p","Test":"TestA"}`,
 		`{"Action":"output","Package":"p","Output":"FAIL\tp\t0.1s\n"}`, `{"Action":"fail","Package":"p"}`)
