@@ -3,10 +3,12 @@ package solver_test
 import (
 	"context"
 	"errors"
+	"math/rand/v2"
 	"slices"
 	"testing"
 
 	"loopwright/solver"
+	"loopwright/solver/solvertest"
 )
 
 // part is a branch in short: its nodes and its law.
@@ -235,5 +237,51 @@ func TestAResonantLoopWithoutResistanceIsUndetermined(t *testing.T) {
 	var problem *solver.Problem
 	if !errors.As(err, &problem) || problem.Code != solver.Undetermined || !slices.Equal(problem.Branches, []int{0, 1}) {
 		t.Fatalf("the error is %v", err)
+	}
+}
+
+// Every problem must name a branch whose change removes it: after at most as many changes as there are branches, there is a
+// solution.
+func TestChangingWhatIsNamedLeadsToASolution(t *testing.T) {
+	random := rand.New(rand.NewPCG(71, 1))
+	mix := solvertest.Mix{Decades: 2, Ideal: 0.3, Real: 0.1, Currents: 0.2, Open: 0.2}
+	seen := map[solver.Code]int{}
+	for trial := range 400 {
+		n := solvertest.Multigraph(random, 2+random.IntN(6), 2+random.IntN(12), mix.RealLaws(random))
+		changes := 0
+		for ; ; changes++ {
+			_, err := solver.Solve(context.Background(), n)
+			var problem *solver.Problem
+			if !errors.As(err, &problem) {
+				break
+			}
+			seen[problem.Code]++
+			if changes > len(n.Branches) || len(problem.Branches) == 0 {
+				t.Fatalf("trial %d: after %d changes there is still %v", trial, changes, problem)
+			}
+			change(n, problem)
+		}
+	}
+	for _, code := range []solver.Code{solver.ShortedSource, solver.SourceLoop, solver.NoReturnPath, solver.Undetermined} {
+		if seen[code] < 10 {
+			t.Errorf("%s was met %d times: the test asks for too little", code, seen[code])
+		}
+	}
+}
+
+// change closes the contacts that would give a current a way back; else it puts 1 Ω in series with an ideal branch, or opens
+// a current source.
+func change(n *solver.Network[float64], problem *solver.Problem) {
+	for _, b := range problem.Open {
+		n.Branches[b].Law = solver.Impedance(1.0, 0)
+	}
+	if len(problem.Open) > 0 {
+		return
+	}
+	law := &n.Branches[problem.Branches[0]].Law
+	if law.Beta == 0 {
+		*law = solver.Open[float64]()
+	} else {
+		law.Alpha = -1
 	}
 }
