@@ -11,7 +11,8 @@ import (
 // markCrossed marks the lines that cross another one without being joined to it, and branches that run over a place to
 // which they are not joined. Its cost is O(n log n), and O(n) more for each slanted line; slanted are only the short ways
 // between pins of parts that have more than two.
-func (g *plane) markCrossed() {
+func (g *plane) markCrossed(node map[schematic.Point]int) {
+	g.markCovered(node)
 	g.sweep(func(p schematic.Point) (across, along int) { return p.X, p.Y })
 	g.sweep(func(p schematic.Point) (across, along int) { return p.Y, p.X })
 	for i := range g.edges {
@@ -40,9 +41,9 @@ type event struct {
 	edge      int // that asks, −1 for a line
 }
 
-// sweep marks the level lines that an upright line crosses, and the branches among them that run over a place. A row
-// moves down the sheet and counts the upright lines that it cuts, by column. What is level and upright depends on how
-// points are read, so that a second sweep does the same for upright lines.
+// sweep marks the level lines that an upright line crosses. A row moves down the sheet and counts the upright lines that it
+// cuts, by column. What is level and upright depends on how points are read, so that a second sweep does the same for
+// upright lines.
 func (g *plane) sweep(read func(schematic.Point) (across, along int)) {
 	events := make([]event, 0, 2*len(g.edges))
 	columns := make([]int, 0, len(g.places))
@@ -78,30 +79,31 @@ func (g *plane) sweep(read func(schematic.Point) (across, along int)) {
 			}
 		}
 	}
-	g.markCovered(read)
 }
 
-// markCovered marks the level branches that run over a place. Pieces of wire never do, since they end at every place.
-func (g *plane) markCovered(read func(schematic.Point) (across, along int)) {
-	type place struct{ along, across int }
-	sorted := make([]place, len(g.places))
-	for i, p := range g.places {
-		sorted[i].across, sorted[i].along = read(p)
-	}
-	compare := func(a, b place) int { return cmp.Or(cmp.Compare(a.along, b.along), cmp.Compare(a.across, b.across)) }
-	slices.SortFunc(sorted, compare)
+// markCovered marks the branches that run over a place. Pieces of wire never do, since they end at every place.
+func (g *plane) markCovered(node map[schematic.Point]int) {
 	for i := range g.edges {
-		a, b := g.line(i)
-		x1, y1 := read(a)
-		x2, y2 := read(b)
-		if g.edges[i].branch < 0 || y1 != y2 {
+		if g.edges[i].branch < 0 {
 			continue
 		}
-		next, _ := slices.BinarySearchFunc(sorted, place{y1, min(x1, x2) + 1}, compare)
-		if next < len(sorted) && compare(sorted[next], place{y1, max(x1, x2)}) < 0 {
-			g.edges[i].crossed = true
+		a, b := g.line(i)
+		dx, dy := b.X-a.X, b.Y-a.Y
+		points := commonDivisor(dx, dy) // grid points on the branch, one of its ends included
+		for k := 1; k < points; k++ {
+			if _, covered := node[schematic.Point{X: a.X + k*dx/points, Y: a.Y + k*dy/points}]; covered {
+				g.edges[i].crossed = true
+			}
 		}
 	}
+}
+
+// commonDivisor is the greatest common divisor of two whole numbers.
+func commonDivisor(a, b int) int {
+	for b != 0 {
+		a, b = b, a%b
+	}
+	return max(a, -a)
 }
 
 // crossSlanted marks a slanted line together with all that it crosses.
@@ -112,10 +114,6 @@ func (g *plane) crossSlanted(i int) {
 		if side(a, b, c)*side(a, b, d) < 0 && side(c, d, a)*side(c, d, b) < 0 {
 			g.edges[i].crossed, g.edges[k].crossed = true, true
 		}
-	}
-	for _, p := range g.places {
-		within := min(a.X, b.X) < p.X && p.X < max(a.X, b.X)
-		g.edges[i].crossed = g.edges[i].crossed || (within && side(a, b, p) == 0)
 	}
 }
 

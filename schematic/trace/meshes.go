@@ -10,7 +10,7 @@ func (d *Drawing) findMeshes() {
 		return
 	}
 	g := d.plane()
-	g.markCrossed()
+	g.markCrossed(d.Joins.Node)
 	g.findBlocks()
 	f := g.findFaces()
 	kept := f.keep()
