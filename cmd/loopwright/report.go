@@ -3,8 +3,6 @@ package main
 import (
 	"bufio"
 	"fmt"
-	"math"
-	"math/cmplx"
 	"slices"
 	"strings"
 
@@ -67,7 +65,7 @@ func readings(drawing *trace.Drawing, c *cases.Case) table {
 	t := table{head: []string{"part", "pins", "voltage", "current", "power"}, right: 2}
 	for b, branch := range drawing.Branches {
 		r := c.Branches[b]
-		row := []string{"-" + branch.Ref, branch.Pins[0] + "–" + branch.Pins[1], voltage(r), amount(r.Current, quantity.Ampere),
+		row := []string{"-" + branch.Ref, branch.Pins[0] + "–" + branch.Pins[1], voltage(r), quantity.Phasor(r.Current, quantity.Ampere, digits),
 			quantity.Format(real(r.Power()), quantity.Watt, digits)}
 		t.rows = append(t.rows, row)
 	}
@@ -109,7 +107,7 @@ func meshes(drawing *trace.Drawing, c *cases.Case) table {
 			drawn = "drawn"
 		}
 		t.rows = append(t.rows, []string{mesh.Name, drawn, strings.Join(along, " "),
-			"i" + strings.TrimPrefix(mesh.Name, "m") + " = " + amount(c.Meshes[m], quantity.Ampere)})
+			"i" + strings.TrimPrefix(mesh.Name, "m") + " = " + quantity.Phasor(c.Meshes[m], quantity.Ampere, digits)})
 	}
 	return t
 }
@@ -118,15 +116,7 @@ func voltage(r cases.Reading) string {
 	if r.Floating {
 		return "floating"
 	}
-	return amount(r.Voltage, quantity.Volt)
-}
-
-// amount writes a value, in AC with its angle.
-func amount(v complex128, unit quantity.Unit) string {
-	if imag(v) == 0 {
-		return quantity.Format(real(v), unit, digits)
-	}
-	return quantity.Format(cmplx.Abs(v), unit, digits) + " ∠" + quantity.Format(cmplx.Phase(v)*180/math.Pi, quantity.Degree, digits)
+	return quantity.Phasor(r.Voltage, quantity.Volt, digits)
 }
 
 // residual writes a figure of the audit, of which only the size matters.

@@ -56,7 +56,7 @@ func meshGroups(groups []Group, drawing *trace.Drawing, rooms []room, solved *ca
 		value := ""
 		if solved.Solved {
 			current := rounded(solved.Meshes[i], s.amperes)
-			value = written(current, quantity.Ampere, s.ac)
+			value = quantity.Phasor(current, quantity.Ampere, digits)
 			group.Attributes = append(group.Attributes, Attribute{"data-current", siNumber(solved.Meshes[i], s.ac)})
 		}
 		if center, radius := roomIn(mesh, rooms[i].center, o, largestArrow); radius >= smallestArrow {

@@ -57,11 +57,11 @@ func readingOf(part *schematic.Part, branch *trace.Branch, r *cases.Reading, s s
 		if !s.ac && !polarised(part.Kind) {
 			voltage = complex(math.Abs(real(voltage)), 0)
 		}
-		out.voltage = written(voltage, quantity.Volt, s.ac)
+		out.voltage = quantity.Phasor(voltage, quantity.Volt, digits)
 	}
 	current = rounded(current, s.amperes)
 	if current == 0 {
-		out.current = written(0, quantity.Ampere, s.ac)
+		out.current = quantity.Phasor(0, quantity.Ampere, digits)
 		return out
 	}
 	forward := !part.Kind.Delivers // along the branch from its first pin
@@ -71,7 +71,7 @@ func readingOf(part *schematic.Part, branch *trace.Branch, r *cases.Reading, s s
 		}
 		current = complex(math.Abs(real(current)), 0)
 	}
-	out.current = written(current, quantity.Ampere, s.ac)
+	out.current = quantity.Phasor(current, quantity.Ampere, digits)
 	way := direction(part, branch, forward)
 	out.way = &way
 	return out
@@ -88,18 +88,6 @@ func rounded(value complex128, largest float64) complex128 {
 		return 0
 	}
 	return value
-}
-
-// written is a value with its unit; a phasor has its angle behind it.
-func written(value complex128, unit quantity.Unit, ac bool) string {
-	var buffer [64]byte
-	if !ac || value == 0 {
-		return string(quantity.Append(buffer[:0], real(value), unit, digits))
-	}
-	out := quantity.Append(buffer[:0], cmplx.Abs(value), unit, digits)
-	out = append(out, " ∠"...)
-	angle := math.Round(cmplx.Phase(value)*1800/math.Pi) / 10
-	return string(quantity.Append(out, angle+0, quantity.Degree, 4))
 }
 
 // direction is the way along a branch as it lies on the sheet: one of the four directions of the grid.

@@ -179,16 +179,12 @@ func readings(sheet *schematic.Sheet, drawing *trace.Drawing, solved *cases.Case
 	return list
 }
 
-// amount writes a value: its size and, in AC, its angle.
+// amount writes a value: its size and, in AC, its angle; of a power, the real part.
 func amount(value complex128, unit quantity.Unit) string {
-	if imag(value) == 0 {
-		return quantity.Format(real(value), unit, digits)
-	}
 	if unit == quantity.Watt {
-		return quantity.Format(real(value), unit, digits)
+		value = complex(real(value), 0)
 	}
-	angle := cmplx.Phase(value) * 180 / 3.141592653589793
-	return quantity.Format(cmplx.Abs(value), unit, digits) + " ∠" + quantity.Format(angle, quantity.Degree, 3)
+	return quantity.Phasor(value, unit, digits)
 }
 
 func audit(solved *cases.Case) Audit {
