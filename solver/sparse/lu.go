@@ -62,16 +62,17 @@ type LU[T Scalar] struct {
 // NewLU prepares for matrices on the analysed pattern.
 func NewLU[T Scalar](symbolic *Symbolic) *LU[T] {
 	n := symbolic.Pattern.N
-	block := make([]int, 9*n+2)
-	values := make([]T, 2*n)
 	expected := symbolic.Pattern.Entries()
+	block := make([]int, 9*n+2+2*expected)
+	values := make([]T, 2*n+2*expected)
+	lower, upper := values[2*n:2*n+expected:2*n+expected], values[2*n+expected:]
 	return &LU[T]{
 		symbolic: symbolic,
 		lStart:   carve(&block, n+1), uStart: carve(&block, n+1),
-		lRow: make([]int, 0, expected), lValue: make([]T, 0, expected),
-		uRow: make([]int, 0, expected), uValue: make([]T, 0, expected),
+		lRow: carve(&block, expected)[:0], lValue: lower[:0],
+		uRow: carve(&block, expected)[:0], uValue: upper[:0],
 		pivot: values[:n:n], rowAt: carve(&block, n), position: carve(&block, n),
-		x: values[n:],
+		x: values[n : 2*n : 2*n],
 		reach: reach{
 			stack: carve(&block, n), top: n, path: carve(&block, n), at: carve(&block, n),
 			mark: carve(&block, n), search: carve(&block, n),
