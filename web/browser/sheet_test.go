@@ -42,11 +42,13 @@ func TestAWireThatEndsOnAWireGetsADotAndACrossingGetsOneOnlyWhenItIsJoined(t *te
 
 func TestThePaperZoomsAboutThePointerPansAndFits(t *testing.T) {
 	page := openSheet(t, demoSheets(t)["two-supplies"])
-	width := func() float64 { return eval[float64](page, `document.getElementById('paper').getBoundingClientRect().width`) }
+	width := func() float64 {
+		return eval[float64](page, `document.getElementById('paper').getBoundingClientRect().width`)
+	}
 	fitted := width()
 	spot := page.middle(`[data-part="R1"] .hit`)
 	for range 4 {
-		page.do(call(input.DispatchMouseEvent, input.DispatchMouseEventParams{Type: chromedp.MouseWheel, X: spot.X, Y: spot.Y, DeltaY: -120, Modifiers: 2}))
+		page.do(call(input.DispatchMouseEvent, input.DispatchMouseEventParams{Type: chromedp.MouseWheel, X: spot.X, Y: spot.Y, DeltaX: 0.01, DeltaY: -120, Modifiers: 2}))
 	}
 	page.wait(fmt.Sprintf(`document.getElementById('paper').getBoundingClientRect().width > 2 * %v`, fitted))
 	if now := page.middle(`[data-part="R1"] .hit`); abs(now.X-spot.X) > 2 || abs(now.Y-spot.Y) > 2 {
