@@ -13,6 +13,7 @@ import (
 	"io/fs"
 	"net/http"
 	"path"
+	"strconv"
 	"strings"
 	"sync"
 )
@@ -107,12 +108,30 @@ func Handler() http.Handler {
 		header.Set("Cache-Control", "public, max-age=31536000, immutable")
 		header.Add("Vary", "Accept-Encoding")
 		body := file.plain
-		if file.zipped != nil && strings.Contains(r.Header.Get("Accept-Encoding"), "gzip") {
+		if file.zipped != nil && acceptsGzip(r.Header.Get("Accept-Encoding")) {
 			header.Set("Content-Encoding", "gzip")
 			body = file.zipped
 		}
+		header.Set("Content-Length", strconv.Itoa(len(body)))
 		if r.Method != http.MethodHead {
 			_, _ = w.Write(body) // nobody is left to tell when the browser has gone
 		}
 	})
+}
+
+// acceptsGzip reports whether an Accept-Encoding header (RFC 9110, section 12.5.3) names gzip with a weight above 0.
+func acceptsGzip(accepted string) bool {
+	for offer := range strings.SplitSeq(accepted, ",") {
+		coding, parameter, weighted := strings.Cut(offer, ";")
+		if !strings.EqualFold(strings.TrimSpace(coding), "gzip") {
+			continue
+		}
+		if !weighted {
+			return true
+		}
+		_, value, _ := strings.Cut(parameter, "=")
+		weight, err := strconv.ParseFloat(strings.TrimSpace(value), 64)
+		return err == nil && weight > 0
+	}
+	return false
 }

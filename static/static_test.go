@@ -52,18 +52,32 @@ func TestACompressedFileIsTheSameFile(t *testing.T) {
 	}
 }
 
-func TestOtherVersionsFoldersAndLicencesAreNotFound(t *testing.T) {
-	for _, path := range []string{"/static/0123456789abcdef/css/base.css", static.Path(""), static.Path("css"), static.Path("css/"), static.Path("../static.go"), "/static/"} {
-		if answer := fetch(t, path, ""); answer.StatusCode != http.StatusNotFound {
-			t.Errorf("%s: %d", path, answer.StatusCode)
+// The weights are those of RFC 9110, section 12.5.3: 0 means "not acceptable".
+func TestAFileIsCompressedOnlyForThoseWhoAcceptIt(t *testing.T) {
+	for accept, want := range map[string]string{
+		"": "", "gzip": "gzip", "br, gzip": "gzip", "deflate, GZIP;q=0.5": "gzip", "gzip; q=1.0, br": "gzip",
+		"gzip;q=0": "", "gzip; q=0.000, br": "", "br, deflate": "", "xgzip": "", "identity": "",
+	} {
+		answer := fetch(t, static.Path("css/base.css"), accept)
+		if got := answer.Header.Get("Content-Encoding"); got != want || answer.Header.Get("Vary") != "Accept-Encoding" {
+			t.Errorf("Accept-Encoding %q: Content-Encoding %q, want %q; Vary %q", accept, got, want, answer.Header.Get("Vary"))
 		}
 	}
 }
 
-func TestTheTypefaceIsTrueType(t *testing.T) {
-	for name, font := range map[string][]byte{"regular": static.Regular(), "bold": static.Bold()} {
-		if !bytes.HasPrefix(font, []byte{0, 1, 0, 0}) {
-			t.Errorf("%s does not begin as TrueType does", name)
+func TestAHeadOfAFileIsItsHeaderAlone(t *testing.T) {
+	request := httptest.NewRequest(http.MethodHead, static.Path("icon/favicon.svg"), nil)
+	answer := httptest.NewRecorder()
+	static.Handler().ServeHTTP(answer, request)
+	if answer.Code != http.StatusOK || answer.Body.Len() != 0 || answer.Header().Get("Content-Length") == "" {
+		t.Errorf("%d, %d bytes, %v", answer.Code, answer.Body.Len(), answer.Header())
+	}
+}
+
+func TestOtherVersionsFoldersAndLicencesAreNotFound(t *testing.T) {
+	for _, path := range []string{"/static/0123456789abcdef/css/base.css", static.Path(""), static.Path("css"), static.Path("css/"), static.Path("../static.go"), "/static/"} {
+		if answer := fetch(t, path, ""); answer.StatusCode != http.StatusNotFound {
+			t.Errorf("%s: %d", path, answer.StatusCode)
 		}
 	}
 }
