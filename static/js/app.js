@@ -4,22 +4,24 @@ import './gestures.js';
 import './tray.js';
 import './share.js';
 import { page } from './page.js';
-import { refresh } from './card.js';
+import { closeCard, openCard, refresh } from './card.js';
 import { history } from './keys.js';
 import { keepUp } from './live.js';
 import { send } from './queue.js';
-import { mark, select, selectedParts, isSelected } from './selection.js';
+import { isSelected, mark, select } from './selection.js';
 import { sheet } from './grid.js';
 
 document.addEventListener('htmx:after:swap', mark);
 document.addEventListener('loopwright:settled', () => { mark(); refresh(); });
-document.addEventListener('loopwright:selection', refresh);
+document.addEventListener('loopwright:selection', closeCard);
 document.addEventListener('loopwright:zoom', mark);
 
 // Tab goes from part to part; a focused part is a selected part.
 sheet.addEventListener('focusin', event => {
   const part = event.target.closest('[data-part]')?.dataset.part;
-  if (part && !isSelected({ part }) && event.target.matches(':focus-visible')) select({ parts: [part] });
+  if (!part || isSelected({ part }) || !event.target.matches(':focus-visible')) return;
+  select({ parts: [part] });
+  openCard();
 });
 
 document.getElementById('undo')?.addEventListener('click', () => history('undo'));
@@ -32,9 +34,10 @@ document.addEventListener('change', event => {
 // What lies in the margin about a part leads to it on the drawing.
 document.addEventListener('click', event => {
   const row = event.target.closest('[data-reading]');
-  if (row) select({ parts: [row.dataset.reading] });
+  if (!row) return;
+  select({ parts: [row.dataset.reading] });
+  openCard();
 });
 
 keepUp();
-if (selectedParts().length > 0) refresh();
 document.body.dataset.ready = '1';

@@ -11,9 +11,23 @@ const leader = svg('line', { class: 'leader', hidden: '' });
 overlay.append(leader);
 let shown = '';
 let asked = 0;
+let wanted = false;
 
-/** Shows the card of the one selected part, or none. */
+/** Shows the card of the one selected part. It stays until something else is selected. */
+export function openCard() {
+  wanted = true;
+  return refresh();
+}
+
+/** Puts the card away. */
+export function closeCard() {
+  wanted = false;
+  hide();
+}
+
+/** Renews the card, if one is wanted. */
 export async function refresh() {
+  if (!wanted) return;
   const [ref, ...more] = selectedParts();
   if (!ref || more.length > 0 || selectedWires().length > 0) { hide(); return; }
   const turn = ++asked;
@@ -107,7 +121,7 @@ async function change(field) {
   if (answer.ok) {
     field.removeAttribute('aria-invalid');
     field.defaultValue = field.value;
-    if (edit.do === 'rename') select({ parts: [edit.to] });
+    if (edit.do === 'rename') { select({ parts: [edit.to] }); openCard(); }
     return;
   }
   trouble.textContent = answer.message;
@@ -138,4 +152,7 @@ callout.addEventListener('keydown', event => {
 document.addEventListener('loopwright:zoom', () => { if (shown) put(shown); });
 
 /** Leads the keyboard into the card. */
-export const enterCard = () => callout.querySelector('[data-value], [data-rename]')?.focus();
+export async function enterCard() {
+  await openCard();
+  callout.querySelector('[data-value], [data-rename]')?.focus();
+}

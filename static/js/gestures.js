@@ -2,6 +2,7 @@
 // selection or pans the paper. A gesture lives from the press to the release; Escape gives it up.
 import { nearest, placeOf, pinPlace, pinAt, joinsAt } from './grid.js';
 import { page } from './page.js';
+import { openCard } from './card.js';
 import { drag } from './move.js';
 import { hideCursor, putCursor } from './cursor.js';
 import { isSelected, select, toggle } from './selection.js';
@@ -25,8 +26,9 @@ function start(event) {
   if (event.shiftKey) return withClick({ move() {}, end() {}, cancel() {} }, () => toggle(thing));
   const fresh = !isSelected(thing);
   if (fresh) select(thing.part ? { parts: [thing.part] } : { wires: [thing.wire] });
-  if (!page.editable) return { move() {}, end() {}, cancel() {} };
+  if (!page.editable) return withClick({ move() {}, end() {}, cancel() {} }, openCard);
   return withClick(drag(event), () => {
+    openCard();
     if (thing.part && event.target.closest('[data-operates]')) operate(thing.part);
   });
 }
