@@ -194,7 +194,11 @@ func (l *layout) partGroup(i int, interactive bool) Group {
 func (l *layout) makeInteractive(group *Group, i int) {
 	s := &l.symbols[i]
 	if s.part.Kind.Positions != nil {
-		group.Attributes = append(group.Attributes, Attribute{"data-operates", "true"},
+		// A click operates a switch; a fuse is not blown by looking at it.
+		if s.part.Kind.Group == kinds.Operate {
+			group.Attributes = append(group.Attributes, Attribute{"data-operates", "true"})
+		}
+		group.Attributes = append(group.Attributes,
 			Attribute{"data-positions", jsonList(s.part.Kind.Positions(s.part.Fill()))},
 			Attribute{"data-position", l.solved.Positions[s.part.Ref]})
 	}

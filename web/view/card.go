@@ -1,6 +1,7 @@
 package view
 
 import (
+	"cmp"
 	"math"
 	"math/cmplx"
 	"strings"
@@ -58,13 +59,29 @@ func field(spec kinds.Spec, part *schematic.Part) Field {
 }
 
 func state(part *schematic.Part, solved *cases.Case) *State {
-	state := &State{Position: solved.Positions[part.Ref]}
+	at := solved.Positions[part.Ref]
+	says, move := wordsOf(part.Kind)
+	state := &State{Says: says(at)}
 	for _, position := range part.Kind.Positions(part.Fill()) {
-		if position != state.Position {
-			state.Others = append(state.Others, position)
+		if position != at {
+			state.Moves = append(state.Moves, Move{position, move(position)})
 		}
 	}
 	return state
+}
+
+// wordsOf gives the words for standing in a position and for being put into it: what is operated is moved by hand, what
+// protects has done its work or is made good again.
+func wordsOf(kind *kinds.Kind) (says, move func(position string) string) {
+	standing := map[string]string{}
+	moving := map[string]string{kinds.Rest: "Release", kinds.Operated: "Operate"}
+	if kind.Group == kinds.Protect {
+		standing = map[string]string{kinds.Rest: "whole", kinds.Operated: "blown"}
+		moving = map[string]string{kinds.Rest: "Replace", kinds.Operated: "Blow"}
+	}
+	says = func(position string) string { return cmp.Or(standing[position], position) }
+	move = func(position string) string { return cmp.Or(moving[position], "To "+position) }
+	return says, move
 }
 
 func computed(sheet *schematic.Sheet, result *cases.Result, solved *cases.Case, part *schematic.Part) ([]Figure, []Limit) {

@@ -170,9 +170,12 @@ type Limit struct {
 
 // State is where a part stands that can be operated.
 type State struct {
-	Position string
-	Others   []string // the positions it can be put into
+	Says  string // "operated", "blown"
+	Moves []Move // into the other positions
 }
+
+// Move puts a part into another position.
+type Move struct{ Position, Says string }
 
 // Link is one shared address of a sheet.
 type Link struct {

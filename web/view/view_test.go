@@ -3,6 +3,7 @@ package view_test
 import (
 	"context"
 	"os"
+	"reflect"
 	"regexp"
 	"strings"
 	"testing"
@@ -82,11 +83,15 @@ func TestTheTrayOffersEveryKindWithASymbol(t *testing.T) {
 	}
 }
 
-func TestTheCardOfASwitchOffersItsOtherPosition(t *testing.T) {
+func TestTheCardSaysWhereAPartStandsAndOffersItsOtherPosition(t *testing.T) {
 	sheet, result := solved(t, "pump-lamp")
-	card := view.BuildCard(sheet, result, 1, sheet.Part("S1"))
-	if card.State == nil || card.State.Position != "operated" || len(card.State.Others) != 1 || card.State.Others[0] != "rest" {
-		t.Errorf("the state is %+v", card.State)
+	for ref, want := range map[string]view.State{
+		"S1": {Says: "operated", Moves: []view.Move{{Position: "rest", Says: "Release"}}},
+		"F1": {Says: "whole", Moves: []view.Move{{Position: "operated", Says: "Blow"}}},
+	} {
+		if card := view.BuildCard(sheet, result, 1, sheet.Part(ref)); card.State == nil || !reflect.DeepEqual(*card.State, want) {
+			t.Errorf("%s: %+v, want %+v", ref, card.State, want)
+		}
 	}
 }
 
