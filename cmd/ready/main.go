@@ -1,5 +1,5 @@
 // Command ready says whether the project is ready to be submitted: it brings what the tests need, and then runs every
-// check and every test. It is the one test command; a step that fails ends it.
+// check and every test. It is the one test command; the first step that fails ends it.
 package main
 
 import (
@@ -7,85 +7,75 @@ import (
 	"flag"
 	"fmt"
 	"os"
-	"os/exec"
 	"os/signal"
-	"time"
+	"slices"
+	"strings"
 )
 
-// step is one check. Its name is what -only takes.
+// step is one check.
 type step struct {
-	name string
-	does string
+	name string // what -only takes
+	does string // what holds when it passes
 	run  func(context.Context) error
 }
 
 // steps are all checks in the order in which they run: what is quick and often wrong comes first.
-func steps() []step {
-	return []step{
-		{"format", "Go files are formatted", checkFormat},
-		{"vet", "go vet finds nothing", checkVet},
-		{"generated", "generated templates are up to date", checkGenerated},
-		{"staticcheck", "staticcheck finds nothing", checkStatic},
-		{"test", "all tests but those of the browser pass, and none is skipped", runTests},
-		{"browser", "all tests in Chromium pass, and none is skipped", runBrowserTests},
-	}
+var steps = []step{
+	{"chromium", "Chromium is there for the tests of the page", bringChromium},
+	{"format", "Go files are formatted", checkFormat},
+	{"vet", "go vet finds nothing", checkVet},
+	{"generated", "generated templates are up to date", checkGenerated},
+	{"staticcheck", "staticcheck finds nothing", checkStatic},
+	{"house", "imports point down, and the top level holds what was agreed", runHouseTests},
+	{"test", "all tests but those of the browser pass, and none is skipped", runTests},
+	{"browser", "all tests in Chromium pass, and none is skipped", runBrowserTests},
 }
+
+// benchmarks is the step of -bench.
+var benchmarks = step{"bench", "every benchmark, once", runBenchmarks}
 
 func main() {
-	only := flag.String("only", "", "run just the step of this name")
+	only := flag.String("only", "", "run just the step of this `name`: "+names(steps))
 	bench := flag.Bool("bench", false, "run the benchmarks instead")
 	flag.Parse()
+	chosen, err := choose(*only, *bench)
+	if err != nil {
+		fmt.Fprintln(os.Stderr, "ready:", err)
+		os.Exit(2)
+	}
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt)
 	defer stop()
-	if *bench {
-		os.Exit(report([]step{{"bench", "benchmarks", runBenchmarks}}, ctx))
+	if err := enterModule(ctx); err != nil {
+		fmt.Fprintln(os.Stderr, "ready:", err)
+		os.Exit(2)
 	}
-	chosen := steps()
-	if *only != "" {
-		chosen = nil
-		for _, s := range steps() {
-			if s.name == *only {
-				chosen = append(chosen, s)
-			}
-		}
-		if chosen == nil {
-			fmt.Fprintf(os.Stderr, "ready: there is no step %q\n", *only)
-			os.Exit(2)
-		}
+	if !runSteps(ctx, os.Stdout, chosen) {
+		stop()
+		os.Exit(1)
 	}
-	code := report(chosen, ctx)
-	stop()
-	os.Exit(code)
 }
 
-// report runs steps up to the first that fails, and says how long each took.
-func report(chosen []step, ctx context.Context) int {
-	type taken struct {
-		name string
-		time time.Duration
+// choose gives the steps that the flags ask for.
+func choose(only string, bench bool) ([]step, error) {
+	switch {
+	case bench && only != "":
+		return nil, fmt.Errorf("-bench runs no step; leave out -only %s", only)
+	case bench:
+		return []step{benchmarks}, nil
+	case only == "":
+		return steps, nil
 	}
-	var times []taken
-	for _, s := range chosen {
-		fmt.Printf("== %s: %s\n", s.name, s.does)
-		start := time.Now()
-		err := s.run(ctx)
-		times = append(times, taken{s.name, time.Since(start)})
-		if err != nil {
-			fmt.Printf("\nNOT READY: %s: %v\nRun it alone with: go run ./cmd/ready -only %s\n", s.name, err, s.name)
-			return 1
-		}
+	at := slices.IndexFunc(steps, func(s step) bool { return s.name == only })
+	if at < 0 {
+		return nil, fmt.Errorf("there is no step %q; there are %s", only, names(steps))
 	}
-	fmt.Println()
-	for _, t := range times {
-		fmt.Printf("%-12s %7.1f s\n", t.name, t.time.Seconds())
-	}
-	fmt.Println("READY")
-	return 0
+	return steps[at : at+1], nil
 }
 
-// run runs a command with its output shown.
-func run(ctx context.Context, name string, arguments ...string) error {
-	command := exec.CommandContext(ctx, name, arguments...)
-	command.Stdout, command.Stderr = os.Stdout, os.Stderr
-	return command.Run()
+func names(all []step) string {
+	var list []string
+	for _, s := range all {
+		list = append(list, s.name)
+	}
+	return strings.Join(list, ", ")
 }
