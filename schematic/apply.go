@@ -1,23 +1,21 @@
 package schematic
 
-import (
-	"errors"
-	"slices"
-)
+import "slices"
 
 // draft is a sheet while a batch of edits is made on it. It shares with the sheet that it began from whatever no edit
 // has touched: parts, wires and cases are replaced, their maps and lists never changed in place.
 type draft struct {
 	Sheet
-	made  Made
-	place string // of the edit that is being made
+	made     Made
+	place    string        // of the edit that is being made
+	wireName func() string // gives the next name for a new wire, never one that the batch has taken away
 }
 
 // Apply makes a batch of edits, all of them or none, and gives the new sheet with what changed. The sheet that it is
 // given stays as it is. Errors: a *ConflictError when the target of an edit is gone or a reference is taken, a
 // *PlaceError when an edit makes no sense. Undo and redo need the log and are refused here.
 func Apply(sheet *Sheet, edits []Edit) (*Sheet, *Change, Made, error) {
-	d := &draft{Sheet: *sheet}
+	d := &draft{Sheet: *sheet, wireName: newWireNames(sheet)}
 	d.Parts = slices.Clone(sheet.Parts)
 	d.Wires = slices.Clone(sheet.Wires)
 	d.Joints = slices.Clone(sheet.Joints)
@@ -33,22 +31,6 @@ func Apply(sheet *Sheet, edits []Edit) (*Sheet, *Change, Made, error) {
 		return nil, nil, Made{}, atPlace(err, d.place)
 	}
 	return &after, Compare(sheet, &after), d.made, nil
-}
-
-// atPlace gives a PlaceError another place, and other errors as they are.
-func atPlace(err error, place string) error {
-	if wrong := (*PlaceError)(nil); errors.As(err, &wrong) {
-		return &PlaceError{place, wrong.Message}
-	}
-	return err
-}
-
-// below puts the place of a PlaceError below another place.
-func below(err error, place string) error {
-	if wrong := (*PlaceError)(nil); errors.As(err, &wrong) {
-		return &PlaceError{under(place, wrong.Place), wrong.Message}
-	}
-	return err
 }
 
 func (d *draft) apply(edit *Edit) error {

@@ -90,8 +90,8 @@ func (d *draft) operate(edit *Edit) error {
 	if err != nil {
 		return err
 	}
-	if err := checkPosition(under(d.place, "position"), part, edit.Ref, edit.Position); err != nil {
-		return err
+	if err := checkPosition(part, edit.Ref, edit.Position); err != nil {
+		return below(err, under(d.place, "position"))
 	}
 	if part.rest() == edit.Position {
 		d.Cases[i].Positions = without(d.Cases[i].Positions, edit.Ref)

@@ -60,42 +60,39 @@ func (d *draft) middle(parts []int) Point {
 	return d.Parts[slices.MinFunc(parts, func(a, b int) int { return far(a) - far(b) })].At
 }
 
-// carry takes parts and wires to where goes says; face sets how a part faces there.
+// carry takes parts and wires to where goes says; face sets how a part faces there. A part that comes to lie on a wire
+// which it was not joined to goes in series.
 func (d *draft) carry(parts, wires []int, goes func(Point) Point, face func(*Part)) error {
 	c := newCarry(d, parts, wires, goes)
 	for _, i := range parts {
 		part := &d.Parts[i]
 		part.At = goes(part.At)
 		face(part)
-		if err := checkReach(d.place, part.At); err != nil {
-			return err
+		if err := checkReach(part.At); err != nil {
+			return below(err, d.place)
 		}
 	}
-	was := make(map[string]int, len(d.Wires)) // the group of each wire before, by its name
-	for w := range d.Wires {
-		was[d.Wires[w].ID] = c.before.Wires[w]
-	}
+	old := d.Wires
 	after := c.run()
-	if d.insertMoved(c.before, was, parts) {
-		after = Join(&d.Sheet)
+	if !c.joinedAnew(after) {
+		return nil
+	}
+	was := make(map[string]int, len(old)) // the group of each wire before, by its name
+	for w := range old {
+		was[old[w].ID] = c.before.Wires[w]
+	}
+	for _, i := range parts {
+		pins := c.before.Pins[i]
+		foreign := func(id string, a, b int) bool {
+			group, known := was[id]
+			return known && pins[a] != pins[b] && group != pins[a] && group != pins[b]
+		}
+		if d.insertInSeries(i, foreign) != nil {
+			after = Join(&d.Sheet)
+		}
 	}
 	d.noteJoins(c.before, after, was, parts)
 	return nil
-}
-
-// insertMoved puts each moved part in series that has come to lie on a wire which it was not joined to, and reports
-// whether there is one.
-func (d *draft) insertMoved(before *Joins, was map[string]int, parts []int) bool {
-	found := false
-	for _, i := range parts {
-		foreign := func(id string, a, b int) bool {
-			group, known := was[id]
-			first, second := before.Pins[i][a], before.Pins[i][b]
-			return known && first != second && group != first && group != second
-		}
-		found = d.insertInSeries(i, foreign) != nil || found
-	}
-	return found
 }
 
 // noteJoins puts down in words what is joined now and was not before some parts or wires moved: for each group that has

@@ -11,18 +11,14 @@ import (
 func (d *draft) add(edit *Edit) error {
 	part := *edit.Part
 	part.Values = maps.Clone(part.Values)
-	place := under(d.place, "part")
 	if part.Ref == "" {
 		part.Ref = d.freeRef(part.Kind.Letter)
 	}
-	if err := checkRef(under(place, "ref"), part.Ref); err != nil {
-		return err
+	if err := checkPart(&part, d.System); err != nil {
+		return below(err, under(d.place, "part"))
 	}
 	if d.Part(part.Ref) != nil {
 		return conflict("the reference -%s is taken; take another one", part.Ref)
-	}
-	if err := checkPart(place, &part, d.System); err != nil {
-		return err
 	}
 	part.dropDefaults()
 	d.Parts = append(d.Parts, part)
@@ -55,7 +51,7 @@ func (d *draft) set(edit *Edit) error {
 	if changed.Values, err = d.setValues(part, edit.Values); err != nil {
 		return err
 	}
-	if err := checkPart("", &changed, d.System); err != nil {
+	if err := checkPart(&changed, d.System); err != nil {
 		return below(err, d.place)
 	}
 	changed.dropDefaults()
@@ -76,7 +72,7 @@ func (d *draft) setValues(part *Part, change any) (kinds.Values, error) {
 	for _, m := range members {
 		spec, known := part.Kind.Spec(m.key)
 		if !known {
-			return nil, refuse(under(place, m.key), "a %s has no value of this name", part.Kind.Title)
+			return nil, refuse(under(place, m.key), "%s has no value of this name", oneOf(part))
 		}
 		if m.value == nil {
 			delete(values, m.key)
@@ -95,7 +91,7 @@ func (d *draft) setValues(part *Part, change any) (kinds.Values, error) {
 func (d *draft) keepPositions(part *Part) {
 	for i := range d.Cases {
 		position, named := d.Cases[i].Positions[part.Ref]
-		if named && (position == part.rest() || checkPosition("", part, part.Ref, position) != nil) {
+		if named && (position == part.rest() || checkPosition(part, part.Ref, position) != nil) {
 			d.Cases[i].Positions = without(d.Cases[i].Positions, part.Ref)
 		}
 	}
@@ -109,8 +105,8 @@ func (d *draft) rename(edit *Edit) error {
 	if edit.To == edit.Ref {
 		return nil
 	}
-	if err := checkRef(under(d.place, "to"), edit.To); err != nil {
-		return err
+	if err := checkRef(edit.To); err != nil {
+		return below(err, under(d.place, "to"))
 	}
 	if d.Part(edit.To) != nil {
 		return conflict("the reference -%s is taken; take another one", edit.To)
@@ -195,7 +191,7 @@ func (d *draft) head(edit *Edit) error {
 	}
 	if changed.System != d.System {
 		for i := range changed.Parts {
-			if err := checkPart("", &changed.Parts[i], changed.System); err != nil {
+			if err := checkPart(&changed.Parts[i], changed.System); err != nil {
 				return atPlace(err, under(place, "system"))
 			}
 		}

@@ -50,18 +50,19 @@ func (d *draft) clearBetween(part, w int, a, b Point) bool {
 	return !slices.ContainsFunc(d.Joints, inside)
 }
 
-// cut takes the stretch between two places out of segment i of a wire; what is left behind it becomes a new wire.
+// cut takes the stretch between two places out of segment i of a wire; what is left behind it becomes a new wire, and
+// what another wire draws already is left out.
 func (d *draft) cut(w, i int, a, b Point) {
 	points := d.Wires[w].Points
 	if onSegment(b, points[i-1], a) {
 		a, b = b, a
 	}
-	head := smooth(append(slices.Clone(points[:i]), a))
-	tail := smooth(append([]Point{b}, points[i:]...))
+	head := d.undrawn(w, smooth(append(slices.Clone(points[:i]), a)))
+	tail := d.undrawn(w, smooth(append([]Point{b}, points[i:]...)))
 	switch {
 	case head != nil && tail != nil:
+		wire := Wire{d.wireName(), tail}
 		d.Wires[w].Points = head
-		wire := Wire{newWireNames(&d.Sheet)(), tail}
 		d.Wires = append(d.Wires, wire)
 		d.made.Wires = append(d.made.Wires, wire.ID)
 	case head != nil:
@@ -72,4 +73,14 @@ func (d *draft) cut(w, i int, a, b Point) {
 		d.Wires = slices.Delete(d.Wires, w, w+1)
 	}
 	d.dropJoints()
+}
+
+// undrawn is a chain, or nil when a wire other than the one with the given index is exactly like it.
+func (d *draft) undrawn(but int, chain []Point) []Point {
+	for k := range d.Wires {
+		if k != but && sameWay(d.Wires[k].Points, chain) {
+			return nil
+		}
+	}
+	return chain
 }

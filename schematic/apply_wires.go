@@ -11,7 +11,7 @@ func (d *draft) wire(edit *Edit) error {
 	if err != nil {
 		return err
 	}
-	wire := Wire{newWireNames(&d.Sheet)(), points}
+	wire := Wire{d.wireName(), points}
 	d.Wires = append(d.Wires, wire)
 	d.made.Wires = append(d.made.Wires, wire.ID)
 	return nil
@@ -35,16 +35,8 @@ func (d *draft) reroute(edit *Edit) error {
 // other than the one with the given index.
 func (d *draft) chain(points []Point, but int) ([]Point, error) {
 	place := under(d.place, "points")
-	if len(points) < 2 {
-		return nil, refuse(place, "a wire needs at least two places")
-	}
-	for i, p := range points {
-		if err := checkReach(at(place, i), p); err != nil {
-			return nil, err
-		}
-		if i > 0 && p.X != points[i-1].X && p.Y != points[i-1].Y {
-			return nil, refuse(at(place, i), "the segment is neither horizontal nor vertical; put a corner between")
-		}
+	if err := checkChain(points, true); err != nil {
+		return nil, below(err, place)
 	}
 	chain := straighten(points)
 	if chain == nil {

@@ -15,6 +15,7 @@ type carry struct {
 	uses   map[int]*use      // what lies at each place, by index in before.Places, of the groups of what moves
 	now    [][]Point         // the way of each wire after the move; nil when the wire is not needed any more
 	met    map[int]Point     // where the ends of wires met that are not needed any more
+	index  []int             // where each wire stands in the list after the move; −1 when it is not needed any more
 	scene  scene
 }
 
@@ -134,9 +135,7 @@ func (c *carry) takeWires() bool {
 
 // carried reports whether something at a place moves: a pin, or a wire as a whole.
 func (c *carry) carried(node int) bool {
-	u := c.uses[node]
-	return slices.ContainsFunc(u.pins, func(pin pinAt) bool { return c.moves[pin.part] }) ||
-		slices.ContainsFunc(u.wires, func(at wireAt) bool { return c.whole[at.wire] })
+	return c.pulled(node) || slices.ContainsFunc(c.uses[node].wires, func(at wireAt) bool { return c.whole[at.wire] })
 }
 
 // anchored reports whether something at a place keeps a wire from moving along: a pin that stays, or another wire that
@@ -190,6 +189,9 @@ func (c *carry) mayFollow(node, wire int) bool {
 
 // layScene collects all that keeps its way from here, which is all but some wires.
 func (c *carry) layScene(but []int) {
+	c.scene.spots = make([]spot, 0, 2*len(c.d.Parts)+3*len(c.now))
+	c.scene.lines = make([]stretch, 0, 2*len(c.now))
+	c.scene.bodies = make([]stretch, 0, len(c.d.Parts))
 	for i := range c.d.Parts {
 		c.scene.addPart(&c.d.Parts[i], c.before.Pins[i])
 	}

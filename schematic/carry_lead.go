@@ -37,11 +37,7 @@ func (c *carry) tieEnd(w, node int, chain []Point) []Point {
 			start = near
 		}
 	}
-	var list []way
-	for _, points := range ways(start, to) {
-		list = append(list, newWay(points, false))
-	}
-	return append(slices.Clone(c.scene.best(list, c.before.Wires[w])), chain[1:]...)
+	return append(slices.Clone(c.scene.bestOf(ways(start, to), c.before.Wires[w])), chain[1:]...)
 }
 
 // settle gives a wire its new way; without one, its ends met at the given place and it is not needed any more.
@@ -61,10 +57,10 @@ func (c *carry) goal(node, wire int) (Point, bool) {
 	if !c.mayFollow(node, wire) {
 		return from, false
 	}
-	u := c.uses[node]
-	if slices.ContainsFunc(u.pins, func(pin pinAt) bool { return c.moves[pin.part] }) {
+	if c.pulled(node) {
 		return to, true
 	}
+	u := c.uses[node]
 	found := false
 	for _, at := range u.wires {
 		if c.whole[at.wire] && leadsOver(c.now[at.wire], from) {
@@ -75,6 +71,11 @@ func (c *carry) goal(node, wire int) (Point, bool) {
 	return to, found
 }
 
+// pulled reports whether a pin at a place moves.
+func (c *carry) pulled(node int) bool {
+	return slices.ContainsFunc(c.uses[node].pins, func(pin pinAt) bool { return c.moves[pin.part] })
+}
+
 // lead leads the ends of a wire to where they follow.
 func (c *carry) lead(w int) {
 	knots := c.knots(w)
@@ -83,8 +84,8 @@ func (c *carry) lead(w int) {
 	for which, node := range ends {
 		to, goes := c.goal(node, w)
 		if goes && knots != nil {
-			loose := (which == 1 || !lastGoes) && c.mayTrim(ends[1-which], w)
-			knots = c.leadEnd(knots, to, c.before.Wires[w], loose)
+			slides := [2]bool{c.pulled(node), (which == 1 || !lastGoes) && c.mayTrim(ends[1-which], w)}
+			knots = c.leadEnd(knots, to, c.before.Wires[w], slides)
 		}
 		slices.Reverse(knots)
 	}
@@ -132,28 +133,29 @@ func (c *carry) mayTrim(node, wire int) bool {
 }
 
 // leadEnd leads the first end of a wire to another place, and changes it up to the first place where it has to stay.
-// With loose, that may be its other end, which may slide along the wire that it ends on. It gives nil when the ends of
-// the wire meet.
-func (c *carry) leadEnd(knots []knot, to Point, group int, loose bool) []knot {
+// Slides tells whether this end, and whether the other one if the wire is changed that far, may slide along a wire that it
+// comes to lie on. It gives nil when the ends of the wire meet.
+func (c *carry) leadEnd(knots []knot, to Point, group int, slides [2]bool) []knot {
 	keep := 1
 	for keep < len(knots)-1 && !knots[keep].held {
 		keep++
 	}
 	last := keep == len(knots)-1
+	slides[1] = slides[1] && last
+	behind := knots[keep:]
 	before := eachKnot(knots[:keep+1])
-	var list []way
-	for _, candidate := range candidates(before, to) {
-		points := c.scene.trim(straighten(candidate.points), group)
-		if last && loose {
-			points = backward(c.scene.trim(backward(points), group))
-		}
-		way := newWay(points, candidate.keepsShape || (len(before) == 2 && len(points) == 2 && alike(before, points)))
-		if n := len(points); n > 0 && !last && heading(points[n-2], points[n-1]) == heading(knots[keep+1].at, knots[keep].at) {
-			way.cost += costOfBack
-		}
-		list = append(list, way)
+	shaped := c.price(shapes(before, to), behind, slides, group)
+	if len(before) == 2 && len(shaped[1].points) != 2 {
+		shaped = shaped[:1] // it does not slide
 	}
-	points := c.scene.best(list, group)
+	for i := range shaped {
+		shaped[i].cost -= worthOfShape
+	}
+	points, cost := c.scene.best(shaped, group)
+	if cost > distance(to, before[keep]) {
+		others := c.price(detours(before, to), behind, slides, group)
+		points, _ = c.scene.best(append(shaped, others...), group)
+	}
 	if points == nil && last {
 		return nil
 	}
@@ -167,35 +169,52 @@ func (c *carry) leadEnd(knots []knot, to Point, group int, loose bool) []knot {
 	return append(led[:max(0, len(led)-1)], knots[keep:]...)
 }
 
-// alike reports whether two chains begin along the same axis.
-func alike(a, b []Point) bool { return (a[0].X == a[1].X) == (b[0].X == b[1].X) }
-
-type candidate struct {
-	points     []Point
-	keepsShape bool
+// price makes ways of the chains that the beginning of a wire could take, with the ends that slide left out where they
+// run along other wires. Behind are the places of the wire from the end of the chains on.
+func (c *carry) price(chains [][]Point, behind []knot, slides [2]bool, group int) []way {
+	list := make([]way, 0, len(chains))
+	for _, chain := range chains {
+		points := straighten(chain)
+		if slides[0] {
+			points = c.scene.trim(points, group)
+		}
+		if slides[1] {
+			points = backward(c.scene.trim(backward(points), group))
+		}
+		way := newWay(points)
+		if n := len(points); n > 0 && len(behind) > 1 && heading(points[n-2], points[n-1]) == heading(behind[1].at, behind[0].at) {
+			way.cost += costOfBack
+		}
+		list = append(list, way)
+	}
+	return list
 }
 
-// candidates lists ways for the beginning of a wire, up to the last of the given places, that begin at another place from
-// now on. Those keep the shape that a hand would draw: a stretch that lies across the motion is shifted, one that lies
-// along it is stretched, and a straight wire gets a jog.
-func candidates(points []Point, to Point) []candidate {
+// shapes lists ways for the beginning of a wire, up to the last of the given places, that keep the shape that a hand drew
+// when it begins at another place: a stretch that lies across the motion is shifted, one that lies along it is stretched,
+// and a straight wire slides or gets a jog.
+func shapes(points []Point, to Point) [][]Point {
 	last := points[len(points)-1]
 	upright := points[0].X == points[1].X
-	var list []candidate
-	if len(points) > 2 {
-		corner := Point{points[1].X, to.Y}
-		if upright {
-			corner = Point{to.X, points[1].Y}
-		}
-		list = append(list, candidate{append([]Point{to, corner}, points[2:]...), true})
-	} else if upright {
-		list = append(list, candidate{viaRow(to, last, (to.Y+last.Y)/2), true})
-	} else {
-		list = append(list, candidate{viaColumn(to, last, (to.X+last.X)/2), true})
+	corner := Point{points[1].X, to.Y}
+	if upright {
+		corner = Point{to.X, points[1].Y}
 	}
+	switch {
+	case len(points) > 2:
+		return [][]Point{append([]Point{to, corner}, points[2:]...)}
+	case upright:
+		return [][]Point{viaRow(to, last, (to.Y+last.Y)/2), {to, corner, last}}
+	}
+	return [][]Point{viaColumn(to, last, (to.X+last.X)/2), {to, corner, last}}
+}
+
+// detours lists other ways for it, which leave out more and more of its places.
+func detours(points []Point, to Point) [][]Point {
+	var list [][]Point
 	for i := 1; i < len(points); i++ {
 		for _, way := range ways(to, points[i]) {
-			list = append(list, candidate{append(way, points[i+1:]...), false})
+			list = append(list, append(way, points[i+1:]...))
 		}
 	}
 	return list

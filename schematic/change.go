@@ -15,38 +15,35 @@ type Change struct {
 	Wires  []Touched `json:"wires,omitempty"`
 	Joints []Touched `json:"joints,omitempty"` // named "x,y"
 	Cases  []Touched `json:"cases,omitempty"`
-	Head   []Touched `json:"head,omitempty"`  // fields of the title block and of the settings; From and To do not count
-	Order  *Touched  `json:"order,omitempty"` // the names of all cases, when those that stayed stand in another order
+	Head   []Touched `json:"head,omitempty"` // fields of the title block and of the settings; From and To do not count
 }
 
 // Touched is one thing before and after a change, written as in a sheet file. Before is empty for what was added, After
 // for what was removed. The indices say where in its list it stood, and are −1 where it did not.
 type Touched struct {
-	Name   string `json:"name,omitempty"`
+	Name   string `json:"name"`
 	From   int    `json:"from"`
 	To     int    `json:"to"`
 	Before string `json:"before,omitempty"`
 	After  string `json:"after,omitempty"`
+	// Moved marks what has changed its place among the things before and after it.
+	Moved bool `json:"moved,omitempty"`
 }
 
 // Empty reports whether nothing was changed.
 func (c *Change) Empty() bool {
-	return len(c.Parts)+len(c.Wires)+len(c.Joints)+len(c.Cases)+len(c.Head) == 0 && c.Order == nil
+	return len(c.Parts)+len(c.Wires)+len(c.Joints)+len(c.Cases)+len(c.Head) == 0
 }
 
 // Inverse is the change that takes this one back.
 func (c *Change) Inverse() *Change {
-	inverse := &Change{Parts: invert(c.Parts), Wires: invert(c.Wires), Joints: invert(c.Joints), Cases: invert(c.Cases), Head: invert(c.Head)}
-	if c.Order != nil {
-		inverse.Order = &invert([]Touched{*c.Order})[0]
-	}
-	return inverse
+	return &Change{invert(c.Parts), invert(c.Wires), invert(c.Joints), invert(c.Cases), invert(c.Head)}
 }
 
 func invert(list []Touched) []Touched {
 	var inverse []Touched
 	for _, t := range list {
-		inverse = append(inverse, Touched{t.Name, t.To, t.From, t.After, t.Before})
+		inverse = append(inverse, Touched{t.Name, t.To, t.From, t.After, t.Before, t.Moved})
 	}
 	return inverse
 }
@@ -95,9 +92,6 @@ func Compare(before, after *Sheet) *Change {
 			}
 		}
 	}
-	if reordered(before.Cases, after.Cases) {
-		c.Order = &Touched{Before: string(appendTexts(nil, caseNames(before.Cases))), After: string(appendTexts(nil, caseNames(after.Cases)))}
-	}
 	return c
 }
 
@@ -129,15 +123,19 @@ func compareLists[T any](old, now []T, how named[T]) []Touched {
 		at[how.name(&old[i])] = i
 	}
 	var list []Touched
+	last := -1 // the furthest place in the old list of those that have stood
 	for k := start; k < len(now); k++ {
 		name := how.name(&now[k])
 		i, known := at[name]
-		delete(at, name)
-		switch {
-		case !known:
+		if !known {
 			list = append(list, Touched{Name: name, From: -1, To: k, After: string(how.text(nil, &now[k]))})
-		case !how.same(&old[i], &now[k]):
-			list = append(list, Touched{name, i, k, string(how.text(nil, &old[i])), string(how.text(nil, &now[k]))})
+			continue
+		}
+		delete(at, name)
+		moved := i < last
+		last = max(last, i)
+		if moved || !how.same(&old[i], &now[k]) {
+			list = append(list, Touched{name, i, k, string(how.text(nil, &old[i])), string(how.text(nil, &now[k])), moved})
 		}
 	}
 	for i := start; i < len(old); i++ {
@@ -151,18 +149,4 @@ func compareLists[T any](old, now []T, how named[T]) []Touched {
 
 func sameCase(a, b *Case) bool {
 	return a.Follows == b.Follows && a.Supply == b.Supply && maps.Equal(a.Positions, b.Positions) && maps.Equal(a.Timers, b.Timers)
-}
-
-func caseNames(cases []Case) []string {
-	names := make([]string, len(cases))
-	for i := range cases {
-		names[i] = cases[i].Name
-	}
-	return names
-}
-
-// reordered reports whether the cases that are in both lists stand in another order.
-func reordered(before, after []Case) bool {
-	was, is := caseNames(before), caseNames(after)
-	return !slices.Equal(withoutOthers(was, is), withoutOthers(is, was))
 }

@@ -231,18 +231,20 @@ func nameWires(sheet *Sheet) {
 	}
 }
 
-// newWireNames gives the next free name of a wire at each call.
+// newWireNames gives the next free name of a wire at each call: w1, w2 … without those that are taken.
 func newWireNames(sheet *Sheet) func() string {
-	taken := make(map[string]bool, len(sheet.Wires))
-	for _, wire := range sheet.Wires {
-		taken[wire.ID] = true
-	}
+	var taken map[string]bool
 	number := 0
 	return func() string {
+		if taken == nil {
+			taken = make(map[string]bool, len(sheet.Wires))
+			for i := range sheet.Wires {
+				taken[sheet.Wires[i].ID] = true
+			}
+		}
 		for {
 			number++
 			if id := "w" + strconv.Itoa(number); !taken[id] {
-				taken[id] = true
 				return id
 			}
 		}

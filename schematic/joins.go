@@ -105,7 +105,8 @@ func heading(from, to Point) Point {
 func (j *Joins) cutWires(sheet *Sheet) {
 	j.right, j.down = make([]bool, len(j.Places)), make([]bool, len(j.Places))
 	j.along = make([][]int, len(sheet.Wires))
-	all := make([]int, 0, 2*len(j.Places)) // one backing array for most wires
+	j.Pieces = make([]Piece, 0, len(j.Places))
+	all := make([]int, 0, 3*len(j.Places)) // one backing array for most wires
 	for w := range sheet.Wires {
 		points := sheet.Wires[w].Points
 		first := len(all)

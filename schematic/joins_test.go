@@ -8,7 +8,6 @@ import (
 
 	"loopwright/schematic"
 	"loopwright/schematic/kinds"
-	"loopwright/schematic/sheettest"
 )
 
 // p is a place; line is a chain of places.
@@ -191,10 +190,9 @@ func (pic picture) groups(sheet *schematic.Sheet, pins int) func(thing int) int 
 }
 
 func TestRandomSheetsJoinAsTheDefinitionSays(t *testing.T) {
-	random := hand{rand.New(rand.NewPCG(11, 12)).IntN}
-	nothing := func(*schematic.Sheet, *schematic.Sheet, *schematic.Change, string) {}
+	random := hand{pick: rand.New(rand.NewPCG(11, 12)).IntN}
 	for round := range 300 {
-		sheet := play(random, 40, nothing)
+		sheet := play(random, 50, func(step) {})
 		pic, pins := pictureOf(sheet)
 		slow := pic.groups(sheet, pins)
 		joins := schematic.Join(sheet)
@@ -234,12 +232,4 @@ func (pic picture) crossings(sheet *schematic.Sheet) []schematic.Point {
 	}
 	slices.SortFunc(list, func(a, b schematic.Point) int { return 1000*(a.Y-b.Y) + a.X - b.X })
 	return list
-}
-
-func BenchmarkJoinOf200Parts(b *testing.B) {
-	sheet := sheettest.Grid(11, 10)
-	b.ReportAllocs()
-	for b.Loop() {
-		schematic.Join(sheet)
-	}
 }

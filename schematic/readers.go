@@ -2,10 +2,11 @@ package schematic
 
 import "strconv"
 
-// under is the place of a field.
+// under is the place of a field, or of what has a place of its own in something: "values" and "resistance", "points" and
+// "[2]".
 func under(place, key string) string {
-	if place == "" {
-		return key
+	if place == "" || key == "" || key[0] == '[' {
+		return place + key
 	}
 	return place + "." + key
 }

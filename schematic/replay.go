@@ -9,13 +9,12 @@ import (
 // something that the change touches is not as it was before the change. The sheet that it is given stays as it is.
 func Replay(sheet *Sheet, change *Change) (*Sheet, error) {
 	after := *sheet
-	var failed [6]error
+	var failed [5]error
 	after.Parts, failed[0] = replayList(sheet.Parts, change.Parts, namedParts, "part -")
 	after.Wires, failed[1] = replayList(sheet.Wires, change.Wires, namedWires, "wire ")
 	after.Joints, failed[2] = replayList(sheet.Joints, change.Joints, namedJoints, "joint at ")
 	after.Cases, failed[3] = replayList(sheet.Cases, change.Cases, namedCases, "case ")
 	failed[4] = replayHead(&after, change.Head)
-	failed[5] = replayOrder(&after, sheet.Cases, change.Order)
 	for _, err := range failed {
 		if err != nil {
 			return nil, err
@@ -52,6 +51,10 @@ func replayList[T any](items []T, touched []Touched, how named[T], what string) 
 			return nil, conflict("%s%s has changed since", what, t.Name)
 		case t.After == "":
 			gone = append(gone, i)
+			continue
+		case t.Moved:
+			gone = append(gone, i)
+			added = append(added, t)
 			continue
 		}
 		item, err := readText(t.After, how.read)
@@ -109,41 +112,4 @@ func replayHead(sheet *Sheet, touched []Touched) error {
 		}
 	}
 	return nil
-}
-
-// replayOrder puts the cases in order. Cases that the change does not know stay behind the others.
-func replayOrder(sheet *Sheet, before []Case, order *Touched) error {
-	if order == nil {
-		return nil
-	}
-	was, err := readText(order.Before, readTexts)
-	if err != nil {
-		return err
-	}
-	names, err := readText(order.After, readTexts)
-	if err != nil {
-		return err
-	}
-	if common := withoutOthers(caseNames(before), was); !slices.Equal(common, withoutOthers(was, common)) {
-		return conflict("the order of the cases has changed since")
-	}
-	rank := func(c Case) int {
-		if i := slices.Index(names, c.Name); i >= 0 {
-			return i
-		}
-		return len(names)
-	}
-	sheet.Cases = slices.Clone(sheet.Cases)
-	slices.SortStableFunc(sheet.Cases, func(a, b Case) int { return cmp.Compare(rank(a), rank(b)) })
-	return nil
-}
-
-func readTexts(value any, place string) (texts []string, err error) {
-	err = intoTexts(&texts)(value, place)
-	return texts, err
-}
-
-// withoutOthers is a list of names without those that are not in another list.
-func withoutOthers(names, others []string) []string {
-	return slices.DeleteFunc(slices.Clone(names), func(name string) bool { return !slices.Contains(others, name) })
 }

@@ -97,36 +97,37 @@ type way struct {
 }
 
 // newWay prices a chain by its own shape. The chain is straightened.
-func newWay(points []Point, keepsShape bool) way {
+func newWay(points []Point) way {
 	cost := 0
-	for k := range points {
-		if k > 0 {
-			cost += costOfStep * distance(points[k-1], points[k])
-		}
-		if k > 1 {
-			cost += costOfCorner
-		}
+	for k := 1; k < len(points); k++ {
+		cost += costOfStep * distance(points[k-1], points[k])
 	}
-	if keepsShape {
-		cost -= worthOfShape
-	}
-	return way{points, cost}
+	return way{points, cost + costOfCorner*max(0, len(points)-2)}
 }
 
-// best chooses the way that costs least, of equal ones the first.
-func (s *scene) best(list []way, group int) []Point {
+// best chooses the way that costs least, of equal ones the first, and tells its cost.
+func (s *scene) best(list []way, group int) ([]Point, int) {
 	slices.SortStableFunc(list, func(a, b way) int { return cmp.Compare(a.cost, b.cost) })
-	var chosen []Point
-	least := 0
-	for i, way := range list {
-		if i > 0 && way.cost >= least {
+	chosen, least := list[0].points, list[0].cost+s.price(list[0].points, group)
+	for _, way := range list[1:] {
+		if way.cost >= least {
 			break
 		}
-		if cost := way.cost + s.price(way.points, group); i == 0 || cost < least {
+		if cost := way.cost + s.price(way.points, group); cost < least {
 			chosen, least = way.points, cost
 		}
 	}
-	return chosen
+	return chosen, least
+}
+
+// bestOf chooses among chains by what they cost.
+func (s *scene) bestOf(chains [][]Point, group int) []Point {
+	list := make([]way, len(chains))
+	for i, chain := range chains {
+		list[i] = newWay(straighten(chain))
+	}
+	points, _ := s.best(list, group)
+	return points
 }
 
 // trim leaves out the beginning of a chain as far as it runs along stretches of its own group, which join what lies

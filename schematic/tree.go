@@ -29,6 +29,25 @@ func refuse(place, format string, arguments ...any) error {
 	return &PlaceError{place, fmt.Sprintf(format, arguments...)}
 }
 
+// atPlace gives a PlaceError another place, and other errors as they are.
+func atPlace(err error, place string) error {
+	if wrong := (*PlaceError)(nil); errors.As(err, &wrong) {
+		return &PlaceError{place, wrong.Message}
+	}
+	return err
+}
+
+// below puts the place of a PlaceError below another place, and gives other errors as they are.
+func below(err error, place string) error {
+	if err == nil {
+		return nil
+	}
+	if wrong := (*PlaceError)(nil); errors.As(err, &wrong) {
+		return &PlaceError{under(place, wrong.Place), wrong.Message}
+	}
+	return err
+}
+
 // SyntaxError is text that is no JSON at all. It is a PlaceError too, whose place is a line.
 type SyntaxError struct{ PlaceError }
 

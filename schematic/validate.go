@@ -32,8 +32,8 @@ func checkHead(sheet *Sheet) error {
 	for _, text := range []struct{ place, text string }{
 		{"title", sheet.Title}, {"number", sheet.Number}, {"owner", sheet.Owner}, {"author", sheet.Author}, {"reference", sheet.Reference},
 	} {
-		if err := checkText(text.place, text.text); err != nil {
-			return err
+		if err := checkText(text.text); err != nil {
+			return below(err, text.place)
 		}
 	}
 	switch {
@@ -51,12 +51,12 @@ func checkHead(sheet *Sheet) error {
 	return nil
 }
 
-func checkText(place, text string) error {
+func checkText(text string) error {
 	switch {
 	case utf8.RuneCountInString(text) > longest:
-		return refuse(place, "the text is longer than %d characters", longest)
+		return refuse("", "the text is longer than %d characters", longest)
 	case strings.ContainsFunc(text, unicode.IsControl):
-		return refuse(place, "the text holds a control character; leave it out")
+		return refuse("", "the text holds a control character; leave it out")
 	}
 	return nil
 }
@@ -65,42 +65,38 @@ func checkParts(sheet *Sheet) error {
 	seen := make(map[string]int, len(sheet.Parts))
 	for i := range sheet.Parts {
 		part := &sheet.Parts[i]
-		place := at("parts", i)
-		if err := checkRef(under(place, "ref"), part.Ref); err != nil {
-			return err
-		}
 		if first, taken := seen[part.Ref]; taken {
-			return refuse(under(place, "ref"), "%q is the reference of parts[%d] already; number it otherwise", part.Ref, first)
+			return refuse(under(at("parts", i), "ref"), "%q is the reference of parts[%d] already; number it otherwise", part.Ref, first)
 		}
 		seen[part.Ref] = i
-		if err := checkPart(place, part, sheet.System); err != nil {
-			return err
+		if err := checkPart(part, sheet.System); err != nil {
+			return below(err, at("parts", i))
 		}
 	}
 	return nil
 }
 
 // checkRef takes K1 and, for a contact of it, K1:2. The hyphen in front belongs to paper and not to the data.
-func checkRef(place, ref string) error {
+func checkRef(ref string) error {
 	device, number, contact := strings.Cut(ref, ":")
 	switch {
 	case ref == "":
-		return refuse(place, "a part needs a reference such as K1")
+		return refuse("", "a part needs a reference such as K1")
 	case utf8.RuneCountInString(ref) > longestRef:
-		return refuse(place, "the reference is longer than %d characters", longestRef)
+		return refuse("", "the reference is longer than %d characters", longestRef)
 	case device == "" || strings.HasPrefix(ref, "-"):
-		return refuse(place, "write the reference as K1, or K1:2 for a contact, without a hyphen in front")
+		return refuse("", "write the reference as K1, or K1:2 for a contact, without a hyphen in front")
 	case contact && !isNumber(number):
-		return refuse(place, "behind the colon stands the number of the contact, as in K1:2")
+		return refuse("", "behind the colon stands the number of the contact, as in K1:2")
 	}
-	return checkName(place, device)
+	return checkSigns(device)
 }
 
-// checkName takes letters of any language, digits and a few signs.
-func checkName(place, name string) error {
+// checkSigns takes letters of any language, digits and a few signs.
+func checkSigns(name string) error {
 	for _, r := range name {
 		if !unicode.IsLetter(r) && !unicode.IsDigit(r) && !strings.ContainsRune("._-+/", r) {
-			return refuse(place, "a name here holds letters, digits and . _ - + / only, not %q", string(r))
+			return refuse("", "a name here holds letters, digits and . _ - + / only, not %q", string(r))
 		}
 	}
 	return nil
@@ -110,43 +106,62 @@ func isNumber(text string) bool {
 	return text != "" && !strings.ContainsFunc(text, func(r rune) bool { return r < '0' || r > '9' })
 }
 
-func checkPart(place string, part *Part, system kinds.System) error {
-	if !isTurn(part.Turn) {
-		return refuse(under(place, "turn"), "%d is not one of 0, 90, 180, 270", part.Turn)
+func checkPart(part *Part, system kinds.System) error {
+	if err := checkRef(part.Ref); err != nil {
+		return below(err, "ref")
 	}
-	if err := checkReach(under(place, "at"), part.At); err != nil {
-		return err
+	if !isTurn(part.Turn) {
+		return refuse("turn", "%d is not one of 0, 90, 180, 270", part.Turn)
+	}
+	if err := checkReach(part.At); err != nil {
+		return below(err, "at")
 	}
 	if part.Label != nil {
-		if err := checkReach(under(place, "label"), *part.Label); err != nil {
-			return err
-		}
-	}
-	for _, spec := range part.Kind.Specs {
-		if _, given := part.Values[spec.Name]; spec.Required && !given {
-			return refuse(under(under(place, "values"), spec.Name), "a %s needs this value", part.Kind.Title)
+		if err := checkReach(*part.Label); err != nil {
+			return below(err, "label")
 		}
 	}
 	if system.AC() && part.Kind.DCOnly {
-		return refuse(under(place, "kind"), "-%s is a %s, which has no place on an ac sheet: those are solved with phasors of one frequency", part.Ref, part.Kind.Title)
+		return refuse("kind", "-%s is %s, which has no place on an ac sheet: those are solved with phasors of one frequency", part.Ref, oneOf(part))
+	}
+	return below(checkValues(part, system), "values")
+}
+
+func checkValues(part *Part, system kinds.System) error {
+	for i := range part.Kind.Specs {
+		spec := &part.Kind.Specs[i]
+		if !spec.Required {
+			continue
+		}
+		if _, given := part.Values[spec.Name]; !given {
+			return refuse(spec.Name, "%s needs this value", oneOf(part))
+		}
 	}
 	if part.Kind.Check == nil {
 		return nil
 	}
-	if err := part.Kind.Check(part.Fill(), system); err != nil {
-		name, says, found := strings.Cut(err.Error(), ": ")
-		if !found {
-			return refuse(under(place, "values"), "%s", err.Error())
-		}
-		return refuse(under(under(place, "values"), name), "%s", says)
+	err := part.Kind.Check(part.Fill(), system)
+	if err == nil {
+		return nil
+	}
+	if name, says, found := strings.Cut(err.Error(), ": "); found {
+		return refuse(name, "%s", says)
+	}
+	return refuse("", "%s", err.Error())
+}
+
+// checkReach keeps sheets within reach, so that no sum of places can overflow.
+func checkReach(p Point) error {
+	if p.X > furthest || p.X < -furthest || p.Y > furthest || p.Y < -furthest {
+		return refuse("", "the place is more than %d grid steps away", furthest)
 	}
 	return nil
 }
 
-// checkReach keeps sheets within reach, so that no sum of places can overflow.
-func checkReach(place string, p Point) error {
-	if p.X > furthest || p.X < -furthest || p.Y > furthest || p.Y < -furthest {
-		return refuse(place, "the place is more than %d grid steps away", furthest)
+// oneOf is the kind of a part with its article: "a lamp", "an ammeter".
+func oneOf(part *Part) string {
+	if strings.ContainsRune("aeiou", rune(part.Kind.Title[0])) {
+		return "an " + part.Kind.Title
 	}
-	return nil
+	return "a " + part.Kind.Title
 }

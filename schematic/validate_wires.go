@@ -7,85 +7,114 @@ import (
 
 func checkWires(sheet *Sheet) error {
 	names := make(map[string]bool, len(sheet.Wires))
-	drawn := make(map[string]int, len(sheet.Wires))
+	drawn := newDrawn(len(sheet.Wires))
 	for i := range sheet.Wires {
 		wire := &sheet.Wires[i]
-		place := at("wires", i)
-		if err := checkWireName(under(place, "id"), wire.ID); err != nil {
-			return err
+		if err := checkWire(wire); err != nil {
+			return below(err, at("wires", i))
 		}
 		if names[wire.ID] {
-			return refuse(under(place, "id"), "%q is the name of another wire; name it otherwise", wire.ID)
+			return refuse(under(at("wires", i), "id"), "%q is the name of another wire; name it otherwise", wire.ID)
 		}
 		names[wire.ID] = true
-		if err := checkChain(under(place, "points"), wire.Points); err != nil {
-			return err
+		if first := drawn.add(sheet.Wires, i); first >= 0 {
+			return refuse(at("wires", i), "wires[%d] is exactly the same; leave one out", first)
 		}
-		key := chainKey(wire.Points)
-		if first, twice := drawn[key]; twice {
-			return refuse(place, "wires[%d] is exactly the same; leave one out", first)
-		}
-		drawn[key] = i
 	}
 	return nil
 }
 
-func checkWireName(place, id string) error {
-	if id == "" || utf8.RuneCountInString(id) > longestRef {
-		return refuse(place, "a wire's name has 1 to %d characters", longestRef)
+func checkWire(wire *Wire) error {
+	if wire.ID == "" || utf8.RuneCountInString(wire.ID) > longestRef {
+		return refuse("id", "a wire's name has 1 to %d characters", longestRef)
 	}
-	return checkName(place, id)
+	if err := checkSigns(wire.ID); err != nil {
+		return below(err, "id")
+	}
+	return below(checkChain(wire.Points, false), "points")
 }
 
-func checkChain(place string, points []Point) error {
+// checkChain takes at least two places, each on the row or the column of the one before, and not the same unless repeats
+// are let pass.
+func checkChain(points []Point, repeats bool) error {
 	if len(points) < 2 {
-		return refuse(place, "a wire needs at least two places")
+		return refuse("", "a wire needs at least two places")
 	}
 	for i, p := range points {
-		if err := checkReach(at(place, i), p); err != nil {
-			return err
+		if err := checkReach(p); err != nil {
+			return below(err, at("", i))
 		}
 		if i == 0 {
 			continue
 		}
 		before := points[i-1]
 		switch {
-		case p == before:
-			return refuse(at(place, i), "the segment has no length; leave the place out")
+		case p == before && !repeats:
+			return refuse(at("", i), "the segment has no length; leave the place out")
 		case p.X != before.X && p.Y != before.Y:
-			return refuse(at(place, i), "the segment is neither horizontal nor vertical; put a corner between")
+			return refuse(at("", i), "the segment is neither horizontal nor vertical; put a corner between")
 		}
 	}
 	return nil
 }
 
-// chainKey is the same for a chain of places and its reverse, and for no other.
-func chainKey(points []Point) string {
-	forth, back := make([]byte, 0, 8*len(points)), make([]byte, 0, 8*len(points))
-	for i := range points {
-		forth = appendPoint(forth, points[i])
-		back = appendPoint(back, points[len(points)-1-i])
+// drawn finds wires that are exactly alike, forwards or backwards.
+type drawn struct {
+	first map[[2]Point]int // the last wire between two ends
+	next  []int            // the wire before that has the same ends; −1 for none
+}
+
+func newDrawn(wires int) *drawn {
+	return &drawn{make(map[[2]Point]int, wires), make([]int, wires)}
+}
+
+// add takes the next wire and gives the index of an earlier one that is exactly like it, or −1.
+func (d *drawn) add(wires []Wire, i int) int {
+	points := wires[i].Points
+	ends := [2]Point{points[0], points[len(points)-1]}
+	if comparePoints(ends[0], ends[1]) > 0 {
+		ends[0], ends[1] = ends[1], ends[0]
 	}
-	return min(string(forth), string(back))
+	other, known := d.first[ends]
+	d.first[ends], d.next[i] = i, -1
+	if known {
+		d.next[i] = other
+	}
+	for k := d.next[i]; k >= 0; k = d.next[k] {
+		if sameWay(points, wires[k].Points) {
+			return k
+		}
+	}
+	return -1
+}
+
+// sameWay reports whether two chains lead over the same places, in the same or in the other direction.
+func sameWay(a, b []Point) bool {
+	if len(a) != len(b) {
+		return false
+	}
+	forth, back := true, true
+	for i, p := range a {
+		forth = forth && p == b[i]
+		back = back && p == b[len(b)-1-i]
+	}
+	return forth || back
 }
 
 func checkJoints(sheet *Sheet) error {
-	seen := map[Point]bool{}
-	for i, joint := range sheet.Joints {
-		place := at("joints", i)
-		if seen[joint] {
-			return refuse(place, "the joint is there twice; leave one out")
-		}
-		seen[joint] = true
-		if err := checkReach(place, joint); err != nil {
-			return err
-		}
+	if len(sheet.Joints) == 0 {
+		return nil
 	}
+	seen := map[Point]bool{}
 	crossed := crossedAt(sheet.Wires, sheet.Joints)
 	for i, joint := range sheet.Joints {
-		if !crossed[joint] {
+		switch {
+		case seen[joint]:
+			return refuse(at("joints", i), "the joint is there twice; leave one out")
+		case !crossed[joint]:
 			return refuse(at("joints", i), "no wires cross here; a joint marks a crossing as joined")
 		}
+		seen[joint] = true
 	}
 	return nil
 }
