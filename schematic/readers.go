@@ -106,14 +106,6 @@ func intoText(target *string) reader {
 	}
 }
 
-// intoWhole reads a whole number.
-func intoWhole(target *int) reader {
-	return func(value any, place string) (err error) {
-		*target, err = readWhole(value, place)
-		return err
-	}
-}
-
 // intoFlag reads yes or no.
 func intoFlag(target *bool) reader {
 	return func(value any, place string) error {
