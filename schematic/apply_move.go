@@ -91,13 +91,13 @@ func (d *draft) carry(parts, wires []int, goes func(Point) Point, face func(*Par
 			after = Join(&d.Sheet)
 		}
 	}
-	d.noteJoins(c.before, after, was, parts)
+	d.noteJoins(c.before, after, was, c.moves)
 	return nil
 }
 
 // noteJoins puts down in words what is joined now and was not before some parts or wires moved: for each group that has
 // come about, one thing of each group before, of the moved parts if possible.
-func (d *draft) noteJoins(before, after *Joins, wires map[string]int, parts []int) {
+func (d *draft) noteJoins(before, after *Joins, wires map[string]int, moved []bool) {
 	type name struct {
 		group int // before
 		text  string
@@ -115,9 +115,8 @@ func (d *draft) noteJoins(before, after *Joins, wires map[string]int, parts []in
 		met[is] = append(met[is], name{was, text()})
 	}
 	for i, groups := range before.Pins {
-		moved := slices.Contains(parts, i)
 		for k, was := range groups {
-			note(was, after.Pins[i][k], moved, func() string { return d.pinName(i, k) })
+			note(was, after.Pins[i][k], moved[i], func() string { return d.pinName(i, k) })
 		}
 	}
 	for w, is := range after.Wires {

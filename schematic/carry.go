@@ -161,7 +161,7 @@ func (c *carry) run() *Joins {
 			led = append(led, w)
 		}
 	}
-	c.layScene(append(slices.Clone(tied), led...))
+	c.layScene(tied, led)
 	for _, w := range tied {
 		c.tie(w)
 	}
@@ -188,7 +188,11 @@ func (c *carry) mayFollow(node, wire int) bool {
 }
 
 // layScene collects all that keeps its way from here, which is all but some wires.
-func (c *carry) layScene(but []int) {
+func (c *carry) layScene(but ...[]int) {
+	later := make([]bool, len(c.now))
+	for _, w := range slices.Concat(but...) {
+		later[w] = true
+	}
 	c.scene.spots = make([]spot, 0, 2*len(c.d.Parts)+3*len(c.now))
 	c.scene.lines = make([]stretch, 0, 2*len(c.now))
 	c.scene.bodies = make([]stretch, 0, len(c.d.Parts))
@@ -196,7 +200,7 @@ func (c *carry) layScene(but []int) {
 		c.scene.addPart(&c.d.Parts[i], c.before.Pins[i])
 	}
 	for w, points := range c.now {
-		if !slices.Contains(but, w) {
+		if !later[w] {
 			c.scene.addChain(points, c.before.Wires[w])
 		}
 	}

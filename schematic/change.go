@@ -112,19 +112,22 @@ func samePart(a, b *Part) bool {
 }
 
 func compareLists[T any](old, now []T, how named[T]) []Touched {
-	same := func(i int) bool { return how.name(&old[i]) == how.name(&now[i]) && how.same(&old[i], &now[i]) }
-	// Most edits leave the beginning of each list as it was.
-	start := 0
-	for start < min(len(old), len(now)) && same(start) {
+	same := func(a, b *T) bool { return how.name(a) == how.name(b) && how.same(a, b) }
+	// Most edits leave the beginning and the end of each list as they were.
+	start, behind := 0, 0
+	for start < min(len(old), len(now)) && same(&old[start], &now[start]) {
 		start++
 	}
-	at := make(map[string]int, len(old)-start)
-	for i := start; i < len(old); i++ {
+	for behind < min(len(old), len(now))-start && same(&old[len(old)-1-behind], &now[len(now)-1-behind]) {
+		behind++
+	}
+	at := make(map[string]int, len(old)-start-behind)
+	for i := start; i < len(old)-behind; i++ {
 		at[how.name(&old[i])] = i
 	}
 	var list []Touched
 	last := -1 // the furthest place in the old list of those that have stood
-	for k := start; k < len(now); k++ {
+	for k := start; k < len(now)-behind; k++ {
 		name := how.name(&now[k])
 		i, known := at[name]
 		if !known {
@@ -138,7 +141,7 @@ func compareLists[T any](old, now []T, how named[T]) []Touched {
 			list = append(list, Touched{name, i, k, string(how.text(nil, &old[i])), string(how.text(nil, &now[k])), moved})
 		}
 	}
-	for i := start; i < len(old); i++ {
+	for i := start; i < len(old)-behind; i++ {
 		name := how.name(&old[i])
 		if _, gone := at[name]; gone {
 			list = append(list, Touched{Name: name, From: i, To: -1, Before: string(how.text(nil, &old[i]))})
