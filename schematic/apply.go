@@ -30,6 +30,8 @@ func Apply(sheet *Sheet, edits []Edit) (*Sheet, *Change, Made, error) {
 	if err := Validate(&after); err != nil {
 		return nil, nil, Made{}, atPlace(err, d.place)
 	}
+	d.made.Refs = slices.DeleteFunc(d.made.Refs, func(ref string) bool { return after.Part(ref) == nil })
+	d.made.Wires = slices.DeleteFunc(d.made.Wires, func(id string) bool { return after.Wire(id) == nil })
 	return &after, Compare(sheet, &after), d.made, nil
 }
 

@@ -63,7 +63,10 @@ func (d *draft) middle(parts []int) Point {
 // carry takes parts and wires to where goes says; face sets how a part faces there. A part that comes to lie on a wire
 // which it was not joined to goes in series.
 func (d *draft) carry(parts, wires []int, goes func(Point) Point, face func(*Part)) error {
-	c := newCarry(d, parts, wires, goes)
+	c, err := newCarry(d, parts, wires, goes)
+	if err != nil {
+		return err
+	}
 	for _, i := range parts {
 		part := &d.Parts[i]
 		part.At = goes(part.At)

@@ -2,6 +2,7 @@ package schematic
 
 import (
 	"maps"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -112,6 +113,9 @@ func (d *draft) rename(edit *Edit) error {
 		return conflict("the reference -%s is taken; take another one", edit.To)
 	}
 	part.Ref = edit.To
+	if i := slices.Index(d.made.Refs, edit.Ref); i >= 0 {
+		d.made.Refs[i] = edit.To
+	}
 	for i := range d.Cases {
 		c := &d.Cases[i]
 		c.Positions = renamed(c.Positions, edit.Ref, edit.To)

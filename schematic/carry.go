@@ -8,11 +8,11 @@ import "slices"
 type carry struct {
 	d      *draft
 	before *Joins
-	parts  []int             // that move, ascending
 	goes   func(Point) Point // where what moves goes; distances stay as they are
 	moves  []bool            // which parts move
 	whole  []bool            // which wires move as a whole
-	uses   map[int]*use      // what lies at each place, by index in before.Places, of the groups of what moves
+	along  [][]int           // the places on each wire of the groups of what moves, by index in before.Places
+	uses   map[int]*use      // what lies at each place of these groups, by the same index
 	now    [][]Point         // the way of each wire after the move; nil when the wire is not needed any more
 	met    map[int]Point     // where the ends of wires met that are not needed any more
 	index  []int             // where each wire stands in the list after the move; −1 when it is not needed any more
@@ -34,9 +34,13 @@ type wireAt struct {
 	twice  bool // it comes there again
 }
 
-func newCarry(d *draft, parts, wires []int, goes func(Point) Point) *carry {
-	c := &carry{d: d, before: Join(&d.Sheet), parts: parts, goes: goes, uses: map[int]*use{}, met: map[int]Point{},
-		moves: make([]bool, len(d.Parts)), whole: make([]bool, len(d.Wires)), now: make([][]Point, len(d.Wires))}
+// mostSpans bounds how many stretches between places may hang on what moves at once.
+const mostSpans = 1_000_000
+
+// newCarry finds what moves along. It is a *PlaceError when that is more than any drawing has.
+func newCarry(d *draft, parts, wires []int, goes func(Point) Point) (*carry, error) {
+	c := &carry{d: d, before: Join(&d.Sheet), goes: goes, uses: map[int]*use{}, met: map[int]Point{}, moves: make([]bool, len(d.Parts)),
+		whole: make([]bool, len(d.Wires)), along: make([][]int, len(d.Wires)), now: make([][]Point, len(d.Wires))}
 	touched := make([]bool, c.before.Groups)
 	for _, i := range parts {
 		c.moves[i] = true
@@ -48,11 +52,20 @@ func newCarry(d *draft, parts, wires []int, goes func(Point) Point) *carry {
 		c.whole[w] = true
 		touched[c.before.Wires[w]] = true
 	}
+	spans := 0
+	for w, group := range c.before.Wires {
+		if touched[group] {
+			spans += c.before.spans(d.Wires[w].Points)
+		}
+	}
+	if spans > mostSpans {
+		return nil, refuse(d.place, "too many wires lie on one another to be moved; remove some of them first")
+	}
 	c.noteUses(touched)
 	c.takeGroups(touched)
 	for c.takeWires() {
 	}
-	return c
+	return c, nil
 }
 
 func (c *carry) noteUses(touched []bool) {
@@ -70,12 +83,13 @@ func (c *carry) noteUses(touched []bool) {
 			}
 		}
 	}
-	for w, nodes := range c.before.along {
-		if !touched[c.before.Wires[w]] {
+	for w, group := range c.before.Wires {
+		if !touched[group] {
 			continue
 		}
-		for k, node := range nodes {
-			at(node).addWire(w, k == 0 || k == len(nodes)-1)
+		c.along[w] = c.before.along(c.d.Wires[w].Points)
+		for k, node := range c.along[w] {
+			at(node).addWire(w, k == 0 || k == len(c.along[w])-1)
 		}
 	}
 }
@@ -117,8 +131,8 @@ func (c *carry) takeGroups(touched []bool) {
 // takeWires lets further wires move as a whole whose ends both lie on what moves, and tells whether there are any.
 func (c *carry) takeWires() bool {
 	found := false
-	for w, nodes := range c.before.along {
-		if c.whole[w] || c.uses[nodes[0]] == nil {
+	for w, nodes := range c.along {
+		if c.whole[w] || nodes == nil {
 			continue
 		}
 		ends := []int{nodes[0], nodes[len(nodes)-1]}
@@ -157,6 +171,7 @@ func (c *carry) run() *Joins {
 			if c.end(w, 0, c.anchored) || c.end(w, 1, c.anchored) {
 				tied = append(tied, w)
 			}
+		case c.along[w] == nil:
 		case c.end(w, 0, c.mayFollow) || c.end(w, 1, c.mayFollow):
 			led = append(led, w)
 		}
@@ -180,11 +195,11 @@ func (c *carry) end(w, which int, ask func(node, wire int) bool) bool {
 }
 
 // endNode is the place of the first end of a wire (0) or the last (1).
-func (c *carry) endNode(w, which int) int { return c.before.along[w][which*(len(c.before.along[w])-1)] }
+func (c *carry) endNode(w, which int) int { return c.along[w][which*(len(c.along[w])-1)] }
 
 // mayFollow reports whether the end of a wire at a place goes along with what moves there.
 func (c *carry) mayFollow(node, wire int) bool {
-	return c.uses[node] != nil && c.carried(node) && !c.anchored(node, wire)
+	return c.carried(node) && !c.anchored(node, wire)
 }
 
 // layScene collects all that keeps its way from here, which is all but some wires.

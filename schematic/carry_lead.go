@@ -102,7 +102,7 @@ func eachKnot(knots []knot) []Point {
 }
 
 func (c *carry) knots(w int) []knot {
-	nodes := c.before.along[w]
+	nodes := c.along[w]
 	var list []knot
 	for k, node := range nodes {
 		end := k == 0 || k == len(nodes)-1

@@ -26,7 +26,7 @@ func decoded(t *testing.T, text string) *schematic.Sheet {
 	t.Helper()
 	sheet, err := schematic.Decode([]byte(text))
 	if err != nil {
-		t.Fatalf("%v\n%s", err, text)
+		t.Fatalf("%v\n%.2000s", err, text)
 	}
 	return sheet
 }

@@ -123,6 +123,15 @@ func TestANewWireDoesNotTakeTheNameOfOneThatTheSameBatchRemoves(t *testing.T) {
 	}
 }
 
+func TestWhatWasMadeIsToldAsItIsAfterTheWholeBatch(t *testing.T) {
+	_, made := edited(t, benchSheet(t), `[
+		{"do": "add", "part": {"kind": "lamp", "at": [40, 20]}}, {"do": "add", "part": {"kind": "lamp", "at": [50, 20]}},
+		{"do": "rename", "ref": "P1", "to": "P9"}, {"do": "wire", "points": [[40, 22], [40, 30]]}, {"do": "remove", "refs": ["P2"], "wires": ["w3"]}]`)
+	if !slices.Equal(made.Refs, []string{"P9"}) || len(made.Wires) > 0 {
+		t.Errorf("made %v", made)
+	}
+}
+
 func TestJointsComeAndGo(t *testing.T) {
 	after, _ := edited(t, benchSheet(t), `[{"do": "joint", "at": [5, -6]}]`)
 	if joins := schematic.Join(after); joins.Wires[0] != joins.Wires[1] {

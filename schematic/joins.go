@@ -27,12 +27,11 @@ type Joins struct {
 	Dots      []Point       // places where three or more ways meet, in reading order
 	Crossings []Point       // where pieces cross without joining, in reading order
 
-	along   [][]int // the places on each wire, as indices, in the direction of drawing
-	groups  []int   // the group of each place
-	columns []int   // the places by x, then by y, as indices
-	column  []int   // where each place stands in columns
-	right   []bool  // whether a piece leads from each place to the next one on its row
-	down    []bool  // whether a piece leads from each place to the next one on its column
+	groups  []int // the group of each place
+	columns []int // the places by x, then by y, as indices
+	column  []int // where each place stands in columns
+	right   runs  // the pieces that lead from each place to the next one on its row
+	down    runs  // the pieces that lead from each place in columns to the next one
 }
 
 // Join finds what is joined on a sheet that passes Validate. Its cost is O(n log n) in the number of pins, wire corners
@@ -40,8 +39,9 @@ type Joins struct {
 func Join(sheet *Sheet) *Joins {
 	j := &Joins{}
 	j.collectPlaces(sheet)
-	j.cutWires(sheet)
-	j.group(sheet)
+	sets := newSets(len(j.Places))
+	j.cutWires(sheet, sets)
+	j.group(sheet, sets)
 	j.findDots(sheet)
 	j.findCrossings()
 	return j
@@ -102,57 +102,91 @@ func heading(from, to Point) Point {
 	return Point{cmp.Compare(to.X, from.X), cmp.Compare(to.Y, from.Y)}
 }
 
-func (j *Joins) cutWires(sheet *Sheet) {
-	j.right, j.down = make([]bool, len(j.Places)), make([]bool, len(j.Places))
-	j.along = make([][]int, len(sheet.Wires))
+func (j *Joins) cutWires(sheet *Sheet, sets sets) {
+	j.right, j.down = newRuns(len(j.Places)), newRuns(len(j.Places))
 	j.Pieces = make([]Piece, 0, len(j.Places))
-	all := make([]int, 0, 3*len(j.Places)) // one backing array for most wires
 	for w := range sheet.Wires {
 		points := sheet.Wires[w].Points
-		first := len(all)
-		all = append(all, j.Node[points[0]])
+		from := j.Node[points[0]]
 		for k := 1; k < len(points); k++ {
 			if bends(points, k) {
-				all = j.follow(all, w, j.Node[points[k]])
+				to := j.Node[points[k]]
+				j.cut(w, from, to, sets)
+				from = to
 			}
 		}
-		j.along[w] = all[first:len(all):len(all)]
 	}
 }
 
-// follow goes straight from the last place of a list to another, lists the places on the way, and notes the pieces.
-func (j *Joins) follow(all []int, wire, to int) []int {
-	from := all[len(all)-1]
-	line, drawn := j.columns, j.down
-	at, end := j.column[from], j.column[to]
-	level := j.Places[from].Y == j.Places[to].Y
-	if level {
-		at, end, drawn = from, to, j.right
-	}
-	step := cmp.Compare(end, at)
-	for at != end {
-		at += step
-		next := at
-		if !level {
-			next = line[at]
+// cut notes the pieces of a straight stretch of a wire that no wire before has drawn.
+func (j *Joins) cut(wire, from, to int, sets sets) {
+	first := len(j.Pieces)
+	if j.Places[from].Y == j.Places[to].Y {
+		for i := j.right.end(min(from, to)); i < max(from, to); i = j.right.end(i) {
+			j.right[i] = i + 1
+			j.Pieces = append(j.Pieces, Piece{wire, j.Places[i], j.Places[i+1]})
+			sets.union(i, i+1)
 		}
-		if low := min(from, next); !drawn[low] {
-			drawn[low] = true
-			j.Pieces = append(j.Pieces, Piece{wire, j.Places[from], j.Places[next]})
+	} else {
+		at, end := j.column[from], j.column[to]
+		for k := j.down.end(min(at, end)); k < max(at, end); k = j.down.end(k) {
+			j.down[k] = k + 1
+			j.Pieces = append(j.Pieces, Piece{wire, j.Places[j.columns[k]], j.Places[j.columns[k+1]]})
+			sets.union(j.columns[k], j.columns[k+1])
 		}
-		all = append(all, next)
-		from = next
 	}
-	return all
+	if from > to { // places in reading order are in order upright, too
+		pieces := j.Pieces[first:]
+		slices.Reverse(pieces)
+		for i := range pieces {
+			pieces[i].From, pieces[i].To = pieces[i].To, pieces[i].From
+		}
+	}
 }
 
-func (j *Joins) group(sheet *Sheet) {
-	sets := newSets(len(j.Places))
-	for _, places := range j.along {
-		for k := 1; k < len(places); k++ {
-			sets.union(places[k-1], places[k])
+// spans counts the steps from place to place on a wire.
+func (j *Joins) spans(points []Point) int {
+	count, from := 0, j.Node[points[0]]
+	for k := 1; k < len(points); k++ {
+		if !bends(points, k) {
+			continue
+		}
+		to := j.Node[points[k]]
+		if j.Places[from].Y == j.Places[to].Y {
+			count += max(from, to) - min(from, to)
+		} else {
+			count += max(j.column[from], j.column[to]) - min(j.column[from], j.column[to])
+		}
+		from = to
+	}
+	return count
+}
+
+// along lists the places on a wire, as indices, in the direction of drawing.
+func (j *Joins) along(points []Point) []int {
+	list := []int{j.Node[points[0]]}
+	for k := 1; k < len(points); k++ {
+		if !bends(points, k) {
+			continue
+		}
+		from, to := list[len(list)-1], j.Node[points[k]]
+		if j.Places[from].Y == j.Places[to].Y {
+			for step := cmp.Compare(to, from); from != to; {
+				from += step
+				list = append(list, from)
+			}
+			continue
+		}
+		at, end := j.column[from], j.column[to]
+		for step := cmp.Compare(end, at); at != end; {
+			at += step
+			list = append(list, j.columns[at])
 		}
 	}
+	return list
+}
+
+func (j *Joins) group(sheet *Sheet, sets sets) {
 	number := make([]int, len(j.Places)) // one more than the group of each root that was met
 	of := func(place int) int {
 		root := sets.find(place)
@@ -173,8 +207,8 @@ func (j *Joins) group(sheet *Sheet) {
 		j.Pins[i] = all[first:len(all):len(all)]
 	}
 	j.Wires = make([]int, len(sheet.Wires))
-	for w, places := range j.along {
-		j.Wires[w] = of(places[0])
+	for w := range sheet.Wires {
+		j.Wires[w] = of(j.Node[sheet.Wires[w].Points[0]])
 	}
 	j.groups = make([]int, len(j.Places))
 	for i := range j.Places {
@@ -185,13 +219,13 @@ func (j *Joins) group(sheet *Sheet) {
 func (j *Joins) findDots(sheet *Sheet) {
 	ways := make([]int, len(j.Places))
 	for i := range j.Places {
-		if j.right[i] {
+		if j.right.leads(i) {
 			ways[i]++
 			ways[i+1]++
 		}
-		if j.down[i] {
+		if k := j.column[i]; j.down.leads(k) {
 			ways[i]++
-			ways[j.columns[j.column[i]+1]]++
+			ways[j.columns[k+1]]++
 		}
 	}
 	for i := range sheet.Parts {
@@ -210,26 +244,38 @@ func (j *Joins) findDots(sheet *Sheet) {
 func (j *Joins) findCrossings() {
 	var rows []int // the first place of each row on which there is a piece
 	for i, p := range j.Places {
-		if j.right[i] && (len(rows) == 0 || j.Places[rows[len(rows)-1]].Y != p.Y) {
+		if j.right.leads(i) && (len(rows) == 0 || j.Places[rows[len(rows)-1]].Y != p.Y) {
 			rows = append(rows, i)
 		}
 	}
 	for i, p := range j.Places {
-		if !j.down[i] {
+		k := j.column[i]
+		if !j.down.leads(k) {
 			continue
 		}
-		end := j.Places[j.columns[j.column[i]+1]].Y
+		end := j.Places[j.columns[k+1]].Y
 		next := sort.Search(len(rows), func(k int) bool { return j.Places[rows[k]].Y > p.Y })
 		for ; next < len(rows) && j.Places[rows[next]].Y < end; next++ {
 			crossing := Point{p.X, j.Places[rows[next]].Y}
 			after, _ := slices.BinarySearchFunc(j.Places, crossing, comparePoints)
-			if after > 0 && j.right[after-1] && j.Places[after-1].Y == crossing.Y {
+			if after > 0 && j.right.leads(after-1) && j.Places[after-1].Y == crossing.Y {
 				j.Crossings = append(j.Crossings, crossing)
 			}
 		}
 	}
 	slices.SortFunc(j.Crossings, comparePoints)
 }
+
+// runs tells for each place of a line how far pieces lead on from it: places that lead nowhere are their own run's end.
+type runs []int
+
+func newRuns(n int) runs { return runs(newSets(n)) }
+
+// end is the first place from which no piece leads on.
+func (r runs) end(i int) int { return sets(r).find(i) }
+
+// leads reports whether a piece leads on from a place.
+func (r runs) leads(i int) bool { return r[i] != i }
 
 // sets are disjoint sets of small numbers, joined without ranks and with path halving.
 type sets []int

@@ -1,6 +1,7 @@
 package schematic
 
 import (
+	"hash/maphash"
 	"slices"
 	"unicode/utf8"
 )
@@ -21,7 +22,7 @@ func checkWires(sheet *Sheet) error {
 			return refuse(at("wires", i), "wires[%d] is exactly the same; leave one out", first)
 		}
 	}
-	return nil
+	return checkCrossings(sheet.Wires)
 }
 
 func checkWire(wire *Wire) error {
@@ -60,32 +61,39 @@ func checkChain(points []Point, repeats bool) error {
 
 // drawn finds wires that are exactly alike, forwards or backwards.
 type drawn struct {
-	first map[[2]Point]int // the last wire between two ends
-	next  []int            // the wire before that has the same ends; −1 for none
+	seed  maphash.Seed
+	first map[uint64]int // the last wire of each hash
+	next  []int          // the wire before that has the same hash; −1 for none
 }
 
 func newDrawn(wires int) *drawn {
-	return &drawn{make(map[[2]Point]int, wires), make([]int, wires)}
+	return &drawn{maphash.MakeSeed(), make(map[uint64]int, wires), make([]int, wires)}
 }
 
 // add takes the next wire and gives the index of an earlier one that is exactly like it, or −1.
 func (d *drawn) add(wires []Wire, i int) int {
-	points := wires[i].Points
-	ends := [2]Point{points[0], points[len(points)-1]}
-	if comparePoints(ends[0], ends[1]) > 0 {
-		ends[0], ends[1] = ends[1], ends[0]
-	}
-	other, known := d.first[ends]
-	d.first[ends], d.next[i] = i, -1
+	hash := d.hash(wires[i].Points)
+	other, known := d.first[hash]
+	d.first[hash], d.next[i] = i, -1
 	if known {
 		d.next[i] = other
 	}
 	for k := d.next[i]; k >= 0; k = d.next[k] {
-		if sameWay(points, wires[k].Points) {
+		if sameWay(wires[i].Points, wires[k].Points) {
 			return k
 		}
 	}
 	return -1
+}
+
+// hash is the same for a chain and its reverse.
+func (d *drawn) hash(points []Point) uint64 {
+	hash := uint64(0)
+	for i, p := range points {
+		q := points[len(points)-1-i]
+		hash = hash*31 + maphash.Comparable(d.seed, p) + maphash.Comparable(d.seed, q)
+	}
+	return hash
 }
 
 // sameWay reports whether two chains lead over the same places, in the same or in the other direction.
