@@ -145,7 +145,7 @@ func (s *Server) sendPatch(w http.ResponseWriter, r *http.Request, access store.
 	return nil
 }
 
-// showCard answers GET /s/{key}/card: the card of one part in one case.
+// showCard answers GET /s/{key}/card: the card of one part (`ref`) or one wire (`wire`) in one case.
 func (s *Server) showCard(w http.ResponseWriter, r *http.Request) error {
 	access, err := s.opened(r)
 	if err != nil {
@@ -155,11 +155,18 @@ func (s *Server) showCard(w http.ResponseWriter, r *http.Request) error {
 	if err != nil {
 		return err
 	}
-	part := solved.Sheet.Part(r.URL.Query().Get("ref"))
-	if part == nil {
+	query := r.URL.Query()
+	shown := solved.caseNamed(query.Get("case"))
+	part, wire := solved.Sheet.Part(query.Get("ref")), solved.Sheet.Wire(query.Get("wire"))
+	var card view.Card
+	switch {
+	case part != nil:
+		card = view.BuildCard(solved.Sheet, solved.Result, shown, part)
+	case wire != nil:
+		card = view.BuildWireCard(solved.Sheet, solved.Result, shown, wire)
+	default:
 		return &problem{status: http.StatusNotFound, message: "There is no such part on the sheet any more."}
 	}
-	card := view.BuildCard(solved.Sheet, solved.Result, solved.caseNamed(r.URL.Query().Get("case")), part)
 	card.Editable = access.Role == store.Edit
 	return sendPage(w, r, http.StatusOK, view.PartCard(&card))
 }

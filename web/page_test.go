@@ -221,6 +221,11 @@ func TestTheCardShowsValuesReadingsAndLimits(t *testing.T) {
 	if text := card.Find(".limit").Text(); !strings.Contains(text, "of 60 W") {
 		t.Errorf("the limit says %q", text)
 	}
+	wire := document(t, s.send("GET", "/s/"+key+"/card?wire=w3&case=Both+supplies", "").body)
+	// Across the load and the ammeter lie (12 + 0.1) Ω times 1.973 A, by Ohm's law.
+	if text := wire.Find(".computed").Text(); !strings.Contains(text, "23.87 V") {
+		t.Errorf("the card of the wire above the load says %q", text)
+	}
 	if answer := s.send("GET", "/s/"+key+"/card?ref=R99", ""); answer.status != http.StatusNotFound {
 		t.Errorf("the card of a part that is not there is answered with %d", answer.status)
 	}

@@ -1,5 +1,5 @@
-// The part card: a callout beside the selected part, with its values to edit and its numbers to read.
-import { boxOf, partGroup, select, selectedParts, selectedWires } from './selection.js';
+// The part card: a callout beside the selected part or wire, with its values to edit and its numbers to read.
+import { boxOf, partGroup, select, selectedParts, selectedWires, wireGroup } from './selection.js';
 import { overlay, sheet, svg } from './grid.js';
 import { page } from './page.js';
 import { send } from './queue.js';
@@ -13,7 +13,7 @@ let shown = '';
 let asked = 0;
 let wanted = false;
 
-/** Shows the card of the one selected part. It stays until something else is selected. */
+/** Shows the card of the one thing that is selected. It stays until something else is selected. */
 export function openCard() {
   wanted = true;
   return refresh();
@@ -28,20 +28,23 @@ export function closeCard() {
 /** Renews the card, if one is wanted. */
 export async function refresh() {
   if (!wanted) return;
-  const [ref, ...more] = selectedParts();
-  if (!ref || more.length > 0 || selectedWires().length > 0) { hide(); return; }
+  const parts = selectedParts(), wires = selectedWires();
+  if (parts.length + wires.length !== 1) { hide(); return; }
+  const name = parts[0] ?? wires[0];
   const turn = ++asked;
-  const address = `/s/${page.key}/card?` + new URLSearchParams({ ref, case: page.shownCase });
+  const address = `/s/${page.key}/card?` + new URLSearchParams({ [parts[0] ? 'ref' : 'wire']: name, case: page.shownCase });
   const response = await fetch(address).catch(() => null);
   if (turn !== asked || !response?.ok) return;
   const text = await response.text();
   if (turn !== asked) return;
-  if (shown === ref && callout.contains(document.activeElement)) keepField(text);
+  if (shown === name && callout.contains(document.activeElement)) keepField(text);
   else callout.innerHTML = text;
-  shown = ref;
+  shown = name;
   callout.hidden = false;
-  put(ref);
+  put();
 }
+
+const shownGroup = () => selectedParts().includes(shown) ? partGroup(shown) : wireGroup(shown);
 
 // While somebody types in the card, only its numbers are renewed.
 function keepField(text) {
@@ -60,8 +63,8 @@ function hide() {
 }
 
 // Where it covers least of the drawing, and not far from the part; it may lie on the desk beside the paper.
-function put(ref) {
-  const group = partGroup(ref);
+function put() {
+  const group = shownGroup();
   if (!group) { hide(); return; }
   const scale = paper.clientWidth / sheet.viewBox.baseVal.width;
   const box = boxOf(group), width = callout.offsetWidth / scale, height = callout.offsetHeight / scale;
@@ -75,7 +78,8 @@ function put(ref) {
   }
   callout.style.left = best.area.left * scale + 'px';
   callout.style.top = best.area.top * scale + 'px';
-  lead(box, best.area, group.getBBox());
+  if (group.dataset.part) lead(box, best.area, group.getBBox());
+  else leader.setAttribute('hidden', '');
 }
 
 // Candidate places: columns to both sides of the part and at the edges, rows from top to bottom.
@@ -143,13 +147,14 @@ callout.addEventListener('click', event => {
   const button = event.target.closest('button');
   if (!button) return;
   if (button.dataset.operate) operate(button.dataset.operate, button.dataset.position);
-  if (button.dataset.act) send([button.dataset.act === 'remove' ? { do: 'remove', refs: [shown], wires: [] } : { do: button.dataset.act, refs: [shown] }]);
+  if (button.dataset.act === 'remove') send([{ do: 'remove', refs: selectedParts(), wires: selectedWires() }]);
+  else if (button.dataset.act) send([{ do: button.dataset.act, refs: [shown] }]);
 });
 callout.addEventListener('keydown', event => {
   event.stopPropagation();
-  if (event.key === 'Escape') partGroup(shown)?.focus({ preventScroll: true });
+  if (event.key === 'Escape') shownGroup()?.focus({ preventScroll: true });
 });
-document.addEventListener('loopwright:zoom', () => { if (shown) put(shown); });
+document.addEventListener('loopwright:zoom', () => { if (shown) put(); });
 
 /** Leads the keyboard into the card. */
 export async function enterCard() {

@@ -83,3 +83,14 @@ func TestALoneSwitchIsOperatedByTouchOnAPhone(t *testing.T) {
 	page.wait(`Number(document.querySelector('[data-part="P1"]').dataset.current) !== 0`)
 	page.settle()
 }
+
+func TestAWireHasACardWithItsPotentialFromWhichItCanBeRemoved(t *testing.T) {
+	page := openSheet(t, demoSheets(t)["two-supplies"])
+	page.click(page.grid(23, 7))
+	page.wait(`document.querySelector('#callout .computed')`)
+	page.click(page.middle(`#callout [data-act="remove"]`))
+	page.wait(`document.querySelectorAll('#sheet [data-wire]').length === 6`)
+	page.settle()
+	page.wait(`document.getElementById('callout').hidden`)
+	near(t, "the current through R1, cut off", page.number(`[data-part="R1"]`, "data-current"), 0)
+}

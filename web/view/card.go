@@ -4,6 +4,7 @@ import (
 	"cmp"
 	"math"
 	"math/cmplx"
+	"slices"
 	"strings"
 
 	"loopwright/schematic"
@@ -34,6 +35,25 @@ func BuildCard(sheet *schematic.Sheet, result *cases.Result, shown int, part *sc
 
 // plainFields is how many values of a kind the card shows at once; of the others it shows those that were given.
 const plainFields = 3
+
+// BuildWireCard is the callout of one wire in one case: the potential that it belongs to.
+func BuildWireCard(sheet *schematic.Sheet, result *cases.Result, shown int, wire *schematic.Wire) Card {
+	solved := &result.Cases[shown]
+	index := result.Drawing.WirePotential[slices.IndexFunc(sheet.Wires, func(w schematic.Wire) bool { return w.ID == wire.ID })]
+	potential := &result.Drawing.Potentials[index]
+	card := Card{Wire: wire.ID, Kind: "wire", Case: solved.Name, Computed: []Figure{{"wire number", potential.WireNumber}}}
+	if potential.Name != "" {
+		card.Computed = append(card.Computed, Figure{"potential", potential.Name})
+	}
+	if solved.Solved {
+		voltage := "floating"
+		if reading := solved.Potentials[index]; !reading.Floating {
+			voltage = amount(reading.Voltage, quantity.Volt)
+		}
+		card.Computed = append(card.Computed, Figure{"voltage to 0", voltage})
+	}
+	return card
+}
 
 func field(spec kinds.Spec, part *schematic.Part) Field {
 	given, has := part.Values[spec.Name]

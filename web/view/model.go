@@ -135,11 +135,11 @@ type KeyLine struct {
 	Does string
 }
 
-// Card is the callout of one part.
+// Card is the callout of one part, or of one wire.
 type Card struct {
-	Key      string
 	Case     string
-	Ref      string
+	Ref      string // of a part; empty for a wire
+	Wire     string // name of a wire; empty for a part
 	Kind     string
 	Editable bool
 	Fields   []Field
