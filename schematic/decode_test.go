@@ -214,6 +214,9 @@ func TestTextThatIsNoJSONIsToldFromJSONThatMakesNoSense(t *testing.T) {
 		if !errors.As(err, &syntax) || syntax.Place != c.place || syntax.Message == "" {
 			t.Errorf("error %v, want one at %q: %s", err, c.place, c.text)
 		}
+		if wrong := (*schematic.PlaceError)(nil); !errors.As(err, &wrong) || wrong.Place != c.place {
+			t.Errorf("a text that is no JSON has no place either: %v", err)
+		}
 	}
 }
 

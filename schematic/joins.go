@@ -32,6 +32,7 @@ type Joins struct {
 	column  []int // where each place stands in columns
 	right   runs  // the pieces that lead from each place to the next one on its row
 	down    runs  // the pieces that lead from each place in columns to the next one
+	table   table // finds places while the joins are made
 }
 
 // Join finds what is joined on a sheet that passes Validate. Its cost is O(n log n) in the number of pins, wire corners
@@ -44,53 +45,12 @@ func Join(sheet *Sheet) *Joins {
 	j.group(sheet, sets)
 	j.findDots(sheet)
 	j.findCrossings()
+	j.table = table{}
 	return j
 }
 
 // comparePoints orders places as one reads: from the top, and from the left.
 func comparePoints(a, b Point) int { return cmp.Or(cmp.Compare(a.Y, b.Y), cmp.Compare(a.X, b.X)) }
-
-// middle moves the coordinates of places, which may be negative, into the range of a half key.
-const middle = 1 << 31
-
-func (j *Joins) collectPlaces(sheet *Sheet) {
-	// Keys sort faster than points; y stands in their upper half.
-	keys := make([]uint64, 0, 2*len(sheet.Parts)+3*len(sheet.Wires))
-	add := func(p Point) { keys = append(keys, uint64(p.Y+middle)<<32|uint64(p.X+middle)) }
-	for i := range sheet.Parts {
-		for k := range sheet.Parts[i].Kind.Pins {
-			add(sheet.Parts[i].pin(k))
-		}
-	}
-	for i := range sheet.Wires {
-		points := sheet.Wires[i].Points
-		for k, p := range points {
-			if bends(points, k) {
-				add(p)
-			}
-		}
-	}
-	for _, p := range sheet.Joints {
-		add(p)
-	}
-	slices.Sort(keys)
-	keys = slices.Compact(keys)
-
-	j.Places = make([]Point, len(keys))
-	j.Node = make(map[Point]int, len(keys))
-	for i, key := range keys {
-		p := Point{int(key&(1<<32-1)) - middle, int(key>>32) - middle}
-		j.Places[i] = p
-		j.Node[p] = i
-		keys[i] = uint64(p.X+middle)<<32 | uint64(i) // the index rises with y within a column
-	}
-	slices.Sort(keys)
-	j.columns, j.column = make([]int, len(keys)), make([]int, len(keys))
-	for k, key := range keys {
-		i := int(key & (1<<32 - 1))
-		j.columns[k], j.column[i] = i, k
-	}
-}
 
 // bends reports whether a chain of places ends or changes its direction at the place k.
 func bends(points []Point, k int) bool {
@@ -107,10 +67,10 @@ func (j *Joins) cutWires(sheet *Sheet, sets sets) {
 	j.Pieces = make([]Piece, 0, len(j.Places))
 	for w := range sheet.Wires {
 		points := sheet.Wires[w].Points
-		from := j.Node[points[0]]
+		from := j.index(points[0])
 		for k := 1; k < len(points); k++ {
 			if bends(points, k) {
-				to := j.Node[points[k]]
+				to := j.index(points[k])
 				j.cut(w, from, to, sets)
 				from = to
 			}
@@ -202,13 +162,13 @@ func (j *Joins) group(sheet *Sheet, sets sets) {
 		part := &sheet.Parts[i]
 		first := len(all)
 		for k := range part.Kind.Pins {
-			all = append(all, of(j.Node[part.pin(k)]))
+			all = append(all, of(j.index(part.pin(k))))
 		}
 		j.Pins[i] = all[first:len(all):len(all)]
 	}
 	j.Wires = make([]int, len(sheet.Wires))
 	for w := range sheet.Wires {
-		j.Wires[w] = of(j.Node[sheet.Wires[w].Points[0]])
+		j.Wires[w] = of(j.index(sheet.Wires[w].Points[0]))
 	}
 	j.groups = make([]int, len(j.Places))
 	for i := range j.Places {
@@ -231,7 +191,7 @@ func (j *Joins) findDots(sheet *Sheet) {
 	for i := range sheet.Parts {
 		part := &sheet.Parts[i]
 		for k := range part.Kind.Pins {
-			ways[j.Node[part.pin(k)]]++
+			ways[j.index(part.pin(k))]++
 		}
 	}
 	for i, p := range j.Places {

@@ -233,3 +233,19 @@ func (pic picture) crossings(sheet *schematic.Sheet) []schematic.Point {
 	slices.SortFunc(list, func(a, b schematic.Point) int { return 1000*(a.Y-b.Y) + a.X - b.X })
 	return list
 }
+
+func TestASheetIsJoinedAlikeHoweverFarItReaches(t *testing.T) {
+	random := hand{pick: rand.New(rand.NewPCG(13, 14)).IntN}
+	for range 50 {
+		sheet := play(random, 50, func(step) {})
+		near := schematic.Join(sheet)
+		wide := *sheet
+		wide.Wires = append(slices.Clone(sheet.Wires), schematic.Wire{ID: "far", Points: line(p(9000, 9000), p(9001, 9000))})
+		far := schematic.Join(&wide)
+		last := len(far.Places) - 2
+		if !slices.Equal(far.Places[:last], near.Places) || !slices.Equal(far.Pieces[:len(far.Pieces)-1], near.Pieces) ||
+			!slices.Equal(far.Dots, near.Dots) || !slices.Equal(far.Crossings, near.Crossings) || far.Groups != near.Groups+1 {
+			t.Fatalf("near %+v\nfar %+v", near, far)
+		}
+	}
+}

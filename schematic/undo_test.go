@@ -214,3 +214,25 @@ func TestALogThatBeginsLaterUndoesOnlyWhatItHolds(t *testing.T) {
 		t.Errorf("title %q", d.sheet.Title)
 	}
 }
+
+func TestAChangeThatHasBeenDamagedIsRefused(t *testing.T) {
+	sheet := decoded(t, dcSheet(resistorWith("")))
+	const part = `{"ref": "R1", "kind": "resistor", "at": [0, 0]}`
+	for _, change := range []schematic.Change{
+		{Parts: []schematic.Touched{{Name: "R1", Before: part, After: `{"ref": "R1"`}}},
+		{Parts: []schematic.Touched{{Name: "R1", Before: part, After: `{"ref": "R1", "kind": "flux", "at": [0, 0]}`}}},
+		{Parts: []schematic.Touched{{Name: "R2", To: -7, After: `{}`}}},
+		{Parts: []schematic.Touched{{Name: "R2", To: 99, After: part}}},
+		{Wires: []schematic.Touched{{Name: "w1", After: `{"id": "w1", "points": []}`}}},
+		{Joints: []schematic.Touched{{Name: "0,0", After: `[0, 0]`}}},
+		{Cases: []schematic.Touched{{Name: "Rest", Before: `{"name": "Rest"}`}}},
+		{Head: []schematic.Touched{{Name: "colour", After: `"red"`}}},
+		{Head: []schematic.Touched{{Name: "title", After: `7`}}},
+		{Head: []schematic.Touched{{Name: "title", After: `"a`}}},
+		{Head: []schematic.Touched{{Name: "size", Before: `"A4"`, After: ``}}},
+	} {
+		if after, err := schematic.Replay(sheet, &change); err == nil {
+			t.Errorf("%+v gives %s", change, schematic.Encode(after))
+		}
+	}
+}

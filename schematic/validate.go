@@ -124,6 +124,9 @@ func checkPart(part *Part, system kinds.System) error {
 	if system.AC() && part.Kind.DCOnly {
 		return refuse("kind", "-%s is %s, which has no place on an ac sheet: those are solved with phasors of one frequency", part.Ref, oneOf(part))
 	}
+	if !system.AC() && part.Kind.ACOnly {
+		return refuse("kind", "-%s is %s, which has no place on a dc sheet: nothing alternates there", part.Ref, oneOf(part))
+	}
 	return below(checkValues(part, system), "values")
 }
 
