@@ -4,13 +4,14 @@ import (
 	"loopwright/schematic/stroke"
 )
 
-// The heights of the lettering, in grid steps.
+// The heights of the lettering, in grid steps. Capitals of values and legends are 2.5 mm high, a nominal size of
+// ISO 3098-1 (from memory); designations are a little larger, numbers at wires and pins smaller.
 const (
-	designationHeight = 0.7
-	legendHeight      = 0.6
-	figureHeight      = 0.64
-	numberHeight      = 0.52
-	markHeight        = 0.55
+	designationHeight = 0.76
+	legendHeight      = 0.685
+	figureHeight      = 0.685
+	numberHeight      = 0.56
+	markHeight        = 0.56
 )
 
 // block is a few lines of lettering that stay together.
@@ -28,7 +29,7 @@ type line struct {
 
 // The arrow before a current: its length, the width of its head, and the gap behind it.
 const (
-	arrowLength = 0.62
+	arrowLength = 0.66
 	arrowWidth  = 0.26
 	arrowGap    = 0.24
 )

@@ -23,17 +23,13 @@ func Compose(sheet *schematic.Sheet, result *cases.Result, options Options) *Pic
 		OriginX: originX, OriginY: originY, Interactive: options.Interactive,
 	}
 	drawing := result.Drawing
-	var rooms []room
-	if options.Meshes {
-		rooms = roomsFor(drawing, l.obstacles)
-	}
-	l.letter()
-	marks := numberGroups(nil, drawing, l.obstacles)
+	rooms := l.letter(options.Meshes)
 	for _, room := range rooms {
-		if room.box >= 0 {
-			l.obstacles.remove(room.box)
+		if room.radius > 0 {
+			l.obstacles.add(around(room.center, room.radius))
 		}
 	}
+	marks := numberGroups(nil, drawing, l.obstacles)
 	groups := make([]Group, 0, 8+len(l.symbols)+len(sheet.Wires)+len(drawing.Joins.Dots)+len(drawing.Meshes)+len(marks)+len(drawing.Statements))
 	if options.Interactive {
 		space := paper.space()
@@ -41,7 +37,7 @@ func Compose(sheet *schematic.Sheet, result *cases.Result, options Options) *Pic
 	}
 	groups = append(groups, paper.frameGroup(), paper.titleGroup(sheet, solved, &options))
 	if options.Meshes {
-		groups = meshGroups(groups, drawing, rooms, solved, l.scale, l.obstacles)
+		groups = meshGroups(groups, drawing, rooms, solved, l.scale)
 	}
 	groups = wireGroups(groups, drawing, options.Interactive)
 	groups = joinGroups(groups, drawing.Joins.Dots)
@@ -144,21 +140,57 @@ func (l *layout) block(paper paper) {
 	o.add(stroke.Box{Left: sheet.Left, Top: space.Bottom, Right: sheet.Right, Bottom: sheet.Bottom})
 }
 
-// letter places all lettering of parts, in reading order.
-func (l *layout) letter() {
+// letter places all lettering of parts, and the arrows of the meshes if they are wanted. Where lettering has filled a
+// mesh, it is placed again with room kept for the arrow.
+func (l *layout) letter(meshes bool) []room {
+	for i := range l.symbols {
+		l.letterers[i].marks = l.symbols[i].marks(l.obstacles)
+		l.letterers[i].labels = l.symbols[i].lettering(l.readings[i])
+	}
+	drawn := len(l.obstacles.boxes)
+	order := l.readingOrder()
+	l.placeAll(order)
+	if !meshes {
+		return nil
+	}
+	rooms := make([]room, len(l.drawing.Meshes))
+	for i := range rooms {
+		rooms[i].center = l.drawing.Meshes[i].Center
+	}
+	if findRooms(rooms, l.drawing, l.obstacles) == 0 {
+		return rooms
+	}
+	l.obstacles.rewind(drawn)
+	var kept []int
+	for i, room := range rooms {
+		if l.drawing.Meshes[i].Drawn && room.radius < wantedArrow {
+			kept = append(kept, l.obstacles.add(around(room.center, wantedArrow+arrowClear)))
+		}
+	}
+	l.placeAll(order)
+	for _, box := range kept {
+		l.obstacles.remove(box)
+	}
+	findRooms(rooms, l.drawing, l.obstacles)
+	return rooms
+}
+
+// readingOrder lists the parts from the top, and from the left.
+func (l *layout) readingOrder() []int {
 	order := make([]int, len(l.symbols))
 	for i := range order {
 		order[i] = i
-		l.letterers[i].marks = l.symbols[i].marks(l.obstacles)
 	}
 	slices.SortStableFunc(order, func(a, b int) int {
 		p, q := l.symbols[a].part.At, l.symbols[b].part.At
 		return cmp.Or(cmp.Compare(p.Y, q.Y), cmp.Compare(p.X, q.X))
 	})
+	return order
+}
+
+func (l *layout) placeAll(order []int) {
 	for _, i := range order {
-		written := &l.letterers[i]
-		written.labels = l.symbols[i].lettering(l.readings[i])
-		written.placement = l.symbols[i].place(&written.labels, l.obstacles)
+		l.letterers[i].placement = l.symbols[i].place(&l.letterers[i].labels, l.obstacles)
 	}
 }
 

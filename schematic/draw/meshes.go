@@ -12,42 +12,34 @@ import (
 // The arrows of mesh currents, in grid steps.
 const (
 	largestArrow  = 2.3
+	wantedArrow   = 0.8 // for which lettering makes room
 	smallestArrow = 0.55
 	smallestName  = 0.3  // half the room of a name without an arrow
-	reservedArrow = 0.8  // for which lettering leaves room in a narrow mesh
-	narrowMesh    = 2.6  // a mesh with less room than that
 	arrowClear    = 0.25 // between an arrow and what is around it
 )
 
-// room is where the arrow of a mesh may lie, and how large it may be there. While lettering is placed, a box keeps
-// some of it free in a narrow mesh.
+// room is where the arrow of a mesh may lie, and how large it may be there.
 type room struct {
 	center stroke.Point
 	radius float64
-	box    int // number of that box; −1 for none
 }
 
-// roomsFor finds the room in each mesh before anything is lettered, and reserves it where lettering could fill it.
-func roomsFor(drawing *trace.Drawing, o *obstacles) []room {
-	rooms := make([]room, len(drawing.Meshes))
-	for i := range drawing.Meshes {
-		rooms[i] = room{center: drawing.Meshes[i].Center, box: -1}
-		if mesh := &drawing.Meshes[i]; mesh.Drawn {
-			rooms[i].center, rooms[i].radius = roomIn(mesh, mesh.Center, o, narrowMesh)
-		}
-	}
+// findRooms finds the room in each drawn mesh, and says in how many it is less than wanted.
+func findRooms(rooms []room, drawing *trace.Drawing, o *obstacles) (crowded int) {
 	for i := range rooms {
-		if drawing.Meshes[i].Drawn && rooms[i].radius < narrowMesh {
-			rooms[i].box = o.add(around(rooms[i].center, reservedArrow+arrowClear))
+		if mesh := &drawing.Meshes[i]; mesh.Drawn {
+			if rooms[i] = roomIn(mesh, rooms[i].center, o); rooms[i].radius < wantedArrow {
+				crowded++
+			}
 		}
 	}
-	return rooms
+	return crowded
 }
 
-// meshGroups draws the arrow of every mesh that is a face of the drawing, where its mesh leaves most room. Where there is
-// room for nothing, its group stays empty; the margin lists all mesh currents.
-func meshGroups(groups []Group, drawing *trace.Drawing, rooms []room, solved *cases.Case, s scale, o *obstacles) []Group {
-	for i := range drawing.Meshes {
+// meshGroups draws the arrow of every mesh that is a face of the drawing. Where there is room for nothing, its group
+// stays empty; the margin lists all mesh currents.
+func meshGroups(groups []Group, drawing *trace.Drawing, rooms []room, solved *cases.Case, s scale) []Group {
+	for i, room := range rooms {
 		mesh := &drawing.Meshes[i]
 		if !mesh.Drawn {
 			continue
@@ -59,25 +51,27 @@ func meshGroups(groups []Group, drawing *trace.Drawing, rooms []room, solved *ca
 			value = quantity.Phasor(current, quantity.Ampere, digits)
 			group.Attributes = append(group.Attributes, Attribute{"data-current", siNumber(solved.Meshes[i], s.ac)})
 		}
-		if center, radius := roomIn(mesh, rooms[i].center, o, largestArrow); radius >= smallestArrow {
-			group.List = meshArrow(center, radius, mesh.Name, value)
-		} else if radius >= smallestName {
-			group.List = appendMeshName(nil, center, mesh.Name, 1.6*radius)
+		switch {
+		case room.radius >= smallestArrow:
+			group.List = meshArrow(room.center, room.radius, mesh.Name, value)
+		case room.radius >= smallestName:
+			group.List = appendMeshName(nil, room.center, mesh.Name, 1.6*room.radius)
 		}
 		groups = append(groups, group)
 	}
 	return groups
 }
 
-// roomIn finds a centre for the arrow of a mesh, and how large it may be there, up to a limit: its own centre if there
-// is room, else the roomiest place near it, where each step away costs a little. It looks first at a place that is known
-// to be good, then at a grid of places, and then around the best of them.
-func roomIn(mesh *trace.Mesh, good stroke.Point, o *obstacles, limit float64) (center stroke.Point, radius float64) {
-	center, radius = mesh.Center, o.clearance(mesh.Center, limit+arrowClear, 0)-arrowClear
-	if radius >= limit {
-		return center, limit
+// roomIn finds the room for the arrow of a mesh: at its own centre if there is enough, else at the roomiest place near
+// it, where each step away costs a little. It looks first at a place that was good before, then at a grid of places, and
+// then around the best of them.
+func roomIn(mesh *trace.Mesh, before stroke.Point, o *obstacles) room {
+	const limit = largestArrow
+	found := room{mesh.Center, o.clearance(mesh.Center, limit+arrowClear, 0) - arrowClear}
+	if found.radius >= limit {
+		return found
 	}
-	best := radius
+	best := found.radius
 	look := func(p stroke.Point) {
 		cost := 0.06 * math.Hypot(p.X-mesh.Center.X, p.Y-mesh.Center.Y)
 		if limit-cost <= best {
@@ -85,7 +79,7 @@ func roomIn(mesh *trace.Mesh, good stroke.Point, o *obstacles, limit float64) (c
 		}
 		free := o.clearance(p, limit+arrowClear, best+cost+arrowClear) - arrowClear
 		if free-cost > best+1e-9 && inside(p, mesh.Outline) {
-			best, center, radius = free-cost, p, free
+			best, found = free-cost, room{p, free}
 		}
 	}
 	lookAround := func(middle stroke.Point, reach int, step float64) {
@@ -95,11 +89,11 @@ func roomIn(mesh *trace.Mesh, good stroke.Point, o *obstacles, limit float64) (c
 			}
 		}
 	}
-	look(good)
+	look(before)
 	lookAround(mesh.Center, 3, 1.5)
-	lookAround(center, 1, 0.7)
-	lookAround(center, 1, 0.35)
-	return center, radius
+	lookAround(found.center, 1, 0.7)
+	lookAround(found.center, 1, 0.35)
+	return found
 }
 
 // inside reports whether a point lies within a closed outline, by the number of its lines to the right of the point.
@@ -136,7 +130,7 @@ func meshArrow(center stroke.Point, radius float64, name, value string) stroke.L
 
 // valueHeight is the height at which a value fits into a circle below the name of its mesh; 0 when it does not fit.
 func valueHeight(value string, radius float64) float64 {
-	const largest, least = 0.6, 0.46
+	const largest, least = 0.64, 0.53
 	if value == "" {
 		return 0
 	}

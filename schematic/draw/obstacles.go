@@ -16,7 +16,7 @@ type obstacles struct {
 	boxes   []stroke.Box
 }
 
-type link struct{ box, next int32 }
+type link struct{ box, next, cell int32 }
 
 // cellSide is the side of a cell, in grid steps.
 const cellSide = 4.0
@@ -50,7 +50,7 @@ func (o *obstacles) add(box stroke.Box) int {
 	for row := top; row <= bottom; row++ {
 		for column := left; column <= right; column++ {
 			cell := row*o.columns + column
-			o.links = append(o.links, link{index, o.heads[cell]})
+			o.links = append(o.links, link{index, o.heads[cell], int32(cell)})
 			o.heads[cell] = int32(len(o.links) - 1)
 		}
 	}
@@ -61,6 +61,16 @@ func (o *obstacles) add(box stroke.Box) int {
 func (o *obstacles) remove(number int) {
 	nowhere := math.Inf(1)
 	o.boxes[number] = stroke.Box{Left: nowhere, Top: nowhere, Right: nowhere, Bottom: nowhere}
+}
+
+// rewind takes away all boxes but a first number of them.
+func (o *obstacles) rewind(boxes int) {
+	for len(o.links) > 0 && int(o.links[len(o.links)-1].box) >= boxes {
+		last := o.links[len(o.links)-1]
+		o.heads[last.cell] = last.next
+		o.links = o.links[:len(o.links)-1]
+	}
+	o.boxes = o.boxes[:boxes]
 }
 
 // free reports whether nothing lies where the box would.

@@ -52,6 +52,10 @@ func (s *symbol) place(l *labels, o *obstacles) placement {
 			o.add(box)
 		}
 	}
+	along(p.leader, 0, func(at stroke.Point) bool {
+		o.add(around(at, clearOfLines))
+		return true
+	})
 	return p
 }
 
@@ -291,15 +295,27 @@ func (s *symbol) leader(box stroke.Box) []stroke.Point {
 
 // clearLine reports whether a leader crosses nothing on its way, its end at the symbol aside.
 func clearLine(leader []stroke.Point, o *obstacles) bool {
+	clear := true
+	along(leader, 0.3, func(at stroke.Point) bool {
+		clear = o.free(around(at, 0.02))
+		return clear
+	})
+	return clear
+}
+
+// along visits places on a leader a quarter of a step apart, but for a piece at its end, until the visit says stop.
+func along(leader []stroke.Point, short float64, visit func(stroke.Point) bool) {
+	if leader == nil {
+		return
+	}
 	from, to := leader[0], leader[1]
 	length := math.Hypot(to.X-from.X, to.Y-from.Y)
-	for along := 0.2; along < length-0.3; along += 0.25 {
-		t := along / length
-		if !o.free(around(stroke.Point{X: from.X + t*(to.X-from.X), Y: from.Y + t*(to.Y-from.Y)}, 0.02)) {
-			return false
+	for at := 0.2; at < length-short; at += 0.25 {
+		t := at / length
+		if !visit(stroke.Point{X: from.X + t*(to.X-from.X), Y: from.Y + t*(to.Y-from.Y)}) {
+			return
 		}
 	}
-	return true
 }
 
 // nearest is the point of a box that is nearest to a point.

@@ -114,21 +114,21 @@ func (row titleRow) drawn(box stroke.Box) stroke.List {
 			lines = append(lines, fine(stroke.Line(left, box.Top, left, box.Bottom)))
 		}
 		wide := cell.part * (box.Right - box.Left)
-		text := stroke.Text{At: stroke.Point{X: left + inset, Y: box.Bottom - 0.36}, Height: 0.58, Bold: cell.bold, Ink: cell.ink}
+		text := stroke.Text{At: stroke.Point{X: left + inset, Y: box.Bottom - 0.34}, Height: 0.62, Bold: cell.bold, Ink: cell.ink}
 		switch {
 		case cell.label == "":
-			text.Height = 0.46
+			text.Height = 0.5
 			text.At.Y = (box.Top + box.Bottom) / 2
 			text.Centred = true
 		case cell.bold:
-			text.Height = 0.78
+			text.Height = 0.82
 			text.At.Y = box.Bottom - 0.44
 		}
 		text.Height, text.Text = setInto(cell.text, text.Height, wide-2*inset, cell.bold)
 		texts = append(texts, text)
 		if cell.label != "" {
 			labels = append(labels, stroke.Text{
-				At: stroke.Point{X: left + inset, Y: box.Top + 0.5}, Text: cell.label, Height: 0.36, Ink: stroke.Grey,
+				At: stroke.Point{X: left + inset, Y: box.Top + 0.52}, Text: cell.label, Height: 0.42, Ink: stroke.Grey,
 			})
 		}
 		left += wide
