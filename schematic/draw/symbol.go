@@ -167,7 +167,8 @@ func (s *symbol) hit() stroke.Box {
 	case len(s.part.Kind.Pins) > 1:
 		box.Left, box.Right = min(box.Left, s.at.X-least), max(box.Right, s.at.X+least)
 	default:
-		box = box.Grown(0.1)
+		// Beside the pin, from which a wire is drawn, there must be enough to take hold of.
+		box = box.Grown(0.1).Around(around(s.middle(), 0.65))
 	}
 	return box
 }
