@@ -24,13 +24,16 @@ type room struct {
 	radius float64
 }
 
-// findRooms finds the room in each drawn mesh, and says in how many it is less than wanted.
+// findRooms finds the room in each drawn mesh, and says in how many it is less than wanted. Rooms that were found before
+// and are still free stay.
 func findRooms(rooms []room, drawing *trace.Drawing, o *obstacles) (crowded int) {
 	for i := range rooms {
-		if mesh := &drawing.Meshes[i]; mesh.Drawn {
-			if rooms[i] = roomIn(mesh, rooms[i].center, o); rooms[i].radius < wantedArrow {
-				crowded++
-			}
+		mesh, before := &drawing.Meshes[i], rooms[i]
+		if !mesh.Drawn || before.radius >= wantedArrow && o.clearance(before.center, before.radius+arrowClear, 0) >= before.radius+arrowClear-1e-9 {
+			continue
+		}
+		if rooms[i] = roomIn(mesh, before.center, o); rooms[i].radius < wantedArrow {
+			crowded++
 		}
 	}
 	return crowded
