@@ -80,7 +80,7 @@ func TestThePageOfASheetCarriesItsHooks(t *testing.T) {
 	key := s.create(demo(t, "two-supplies"))
 	page := document(t, s.send("GET", "/s/"+key+"?case=G2+isolated", "").body)
 	for selector, want := range map[string]int{
-		`#sheet[data-step][data-origin]`: 1, `[data-tray]`: 15, `#sheet [data-part][data-kind]`: 7, `#sheet [data-part][data-voltage][data-current]`: 6,
+		`#sheet[data-step][data-origin]`: 1, `#sheet [data-part][data-kind]`: 7, `#sheet [data-part][data-voltage][data-current]`: 6,
 		`#sheet [data-pin]`: 13, `#sheet [data-wire][data-potential]`: 7, `#sheet [data-mesh][data-current]`: 2, `[data-case]`: 3,
 		`[data-case="G2 isolated"][aria-current="true"]`: 1, `body[data-state="saved"]`: 1,
 	} {

@@ -19,7 +19,7 @@ var CurrentSource = register(&Kind{
 	Branches: func(values Filled, _ Condition) []Branch {
 		return []Branch{{"1", "2", Current(-phasor(values.Number("current"), values))}}
 	},
-	Legend:   legendOf("current"),
+	Legend:   withPhase("current"),
 	Check:    checkPhase,
 	Delivers: true,
 })

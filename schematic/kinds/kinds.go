@@ -53,6 +53,8 @@ type Kind struct {
 	SameConductor bool
 	// DCOnly marks kinds that a phasor solution cannot hold; an AC sheet refuses them.
 	DCOnly bool
+	// ACOnly marks kinds that do nothing where nothing alternates; a DC sheet refuses them.
+	ACOnly bool
 	// Ratings are what the part is rated for, as far as a value tells it.
 	Ratings []Rating
 }
@@ -225,8 +227,8 @@ func Lookup(name string) (*Kind, error) {
 
 // planned are the kinds of the sheet format that this version cannot solve yet.
 var planned = []string{
-	"ac-supply", "transmitter", "vcvs", "ccvs", "vccs", "cccs", "potentiometer", "capacitor", "inductor", "impedance",
-	"rtd", "heater", "indicator", "coil", "valve", "input", "load", "contact", "changeover", "breaker", "cable",
+	"transmitter", "vcvs", "ccvs", "vccs", "cccs",
+	"indicator", "coil", "valve", "input", "load", "contact", "changeover", "breaker", "cable",
 	"cable-pair", "diode", "led", "zener", "transformer",
 }
 

@@ -3,6 +3,7 @@ package kinds
 import (
 	"encoding/json"
 	"math"
+	"math/cmplx"
 	"slices"
 	"strings"
 	"testing"
@@ -15,6 +16,8 @@ import (
 var first = map[string]struct{ pins, branches int }{
 	"voltage-source": {2, 1}, "dc-supply": {2, 1}, "battery": {2, 1}, "current-source": {2, 1}, "resistor": {2, 1},
 	"lamp": {2, 1}, "switch": {2, 1}, "fuse": {2, 1}, "voltmeter": {2, 1}, "ammeter": {2, 1},
+	"ac-supply": {2, 1}, "capacitor": {2, 1}, "inductor": {2, 1}, "impedance": {2, 1}, "heater": {2, 1}, "rtd": {2, 1},
+	"potentiometer": {3, 2},
 	"terminal": {1, 0}, "potential": {1, 0}, "earth": {1, 0},
 }
 
@@ -53,7 +56,7 @@ func checkSpecs(t *testing.T, kind *Kind) {
 			if spec.Least == 0 && spec.Most == 0 && !spec.Positive {
 				t.Errorf("%s has no bounds", spec.Name)
 			}
-			if spec.Unit == quantity.None && spec.Name != "cold_ratio" {
+			if spec.Unit == quantity.None && spec.Name != "cold_ratio" && spec.Name != "setting" {
 				t.Errorf("%s has no unit", spec.Name)
 			}
 			if !spec.Required && !spec.Optional {
@@ -74,6 +77,14 @@ func checkSpecs(t *testing.T, kind *Kind) {
 	}
 }
 
+// systemOf is a system in which a kind has its place.
+func systemOf(kind *Kind) System {
+	if kind.ACOnly {
+		return System{Kind: "ac", Hertz: 50}
+	}
+	return System{Kind: "dc"}
+}
+
 // checkTray holds that a part works as the tray puts it down: all required values given, nothing refused, branches that
 // join its own pins by finite laws, a symbol that reaches its pins in every position.
 func checkTray(t *testing.T, kind *Kind, branches int) {
@@ -91,7 +102,7 @@ func checkTray(t *testing.T, kind *Kind, branches int) {
 			}
 		}
 		if kind.Check != nil {
-			if err := kind.Check(filled, System{Kind: "dc"}); err != nil {
+			if err := kind.Check(filled, systemOf(kind)); err != nil {
 				t.Errorf("%s: refused: %v", entry.Title, err)
 			}
 		}
@@ -117,7 +128,7 @@ func checkBranches(t *testing.T, kind *Kind, filled Filled, position string, wan
 		return
 	}
 	for _, level := range []Level{Low, Nominal, High} {
-		list := kind.Branches(filled, Condition{System: System{Kind: "dc"}, Supply: level, Position: position})
+		list := kind.Branches(filled, Condition{System: systemOf(kind), Supply: level, Position: position})
 		if len(list) != want {
 			t.Errorf("%d branches, want %d", len(list), want)
 		}
@@ -127,8 +138,8 @@ func checkBranches(t *testing.T, kind *Kind, filled Filled, position string, wan
 			if !from || !to {
 				t.Errorf("the branch %s–%s does not join pins", branch.From, branch.To)
 			}
-			size := math.Abs(real(branch.Law.Alpha)) + math.Abs(real(branch.Law.Beta))
-			if size == 0 || math.IsNaN(size+real(branch.Law.Gamma)) || math.IsInf(size, 0) {
+			size := cmplx.Abs(branch.Law.Alpha) + cmplx.Abs(branch.Law.Beta)
+			if size == 0 || math.IsNaN(size+cmplx.Abs(branch.Law.Gamma)) || math.IsInf(size, 0) {
 				t.Errorf("the law %+v says nothing", branch.Law)
 			}
 		}
@@ -210,6 +221,9 @@ func TestValuesThatMakeNoSenseTogetherAreRefused(t *testing.T) {
 		{DCSupply, Values{"low": Number(25)}, dc, "low:"},
 		{DCSupply, Values{"high": Number(23)}, dc, "high:"},
 		{DCSupply, Values{"low": Number(24), "high": Number(24)}, dc, ""},
+		{ACSupply, Values{"low": Number(130)}, ac, "low:"},
+		{FixedImpedance, Values{"reactance": Number(3)}, dc, "reactance:"},
+		{FixedImpedance, Values{"reactance": Number(3)}, ac, ""},
 		{Battery, Values{"low": Number(13)}, dc, "low:"},
 		{Lamp, Values{"cold_ratio": Number(0.1)}, dc, "cold_ratio:"},
 		{Switch, Values{"drop": Number(2)}, dc, "drop:"},

@@ -23,6 +23,16 @@ func phasor(magnitude float64, values Filled) complex128 {
 	return complex(magnitude, 0) * cmplx.Rect(1, degrees*math.Pi/180)
 }
 
+// withPhase makes the Legend of a source: its magnitude, with the phase where there is one.
+func withPhase(name string) func(Filled) string {
+	return func(values Filled) string {
+		if values.Number("phase") == 0 {
+			return values.Exact(name)
+		}
+		return values.Exact(name) + " ∠ " + values.Exact("phase")
+	}
+}
+
 // checkPhase refuses a phase where nothing alternates.
 func checkPhase(values Filled, system System) error {
 	if !system.AC() && values.Number("phase") != 0 {

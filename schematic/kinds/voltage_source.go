@@ -22,7 +22,7 @@ var VoltageSource = register(&Kind{
 		resistance := complex(values.Number("resistance"), 0)
 		return []Branch{{"1", "2", Impedance(resistance, phasor(values.Number("voltage"), values))}}
 	},
-	Legend:   legendOf("voltage"),
+	Legend:   withPhase("voltage"),
 	Check:    checkPhase,
 	Delivers: true,
 })

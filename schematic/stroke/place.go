@@ -93,8 +93,8 @@ func (b Box) Overlap(c Box) float64 {
 	return width * height
 }
 
-// Bounds is the smallest box that holds every line, circle and arc of the list; an arc counts as its whole circle, and
-// texts do not count, since their width is only known where they are set. The second result is false for a list
+// Bounds is the smallest box that holds every line, circle and arc of the list; texts do not
+// count, since their width is only known where they are set. The second result is false for a list
 // without such shapes.
 func (l List) Bounds() (Box, bool) {
 	var box Box
@@ -114,8 +114,24 @@ func (l List) Bounds() (Box, bool) {
 		case Circle:
 			include(Box{s.Center.X - s.Radius, s.Center.Y - s.Radius, s.Center.X + s.Radius, s.Center.Y + s.Radius})
 		case Arc:
-			include(Box{s.Center.X - s.Radius, s.Center.Y - s.Radius, s.Center.X + s.Radius, s.Center.Y + s.Radius})
+			include(s.bounds())
 		}
 	}
 	return box, found
+}
+
+// bounds is the smallest box that holds the arc: its ends, and each of the four outermost points of its circle that it
+// passes.
+func (a Arc) bounds() Box {
+	at := func(degrees float64) Box {
+		sin, cos := math.Sincos(degrees * math.Pi / 180)
+		x, y := a.Center.X+a.Radius*cos, a.Center.Y+a.Radius*sin
+		return Box{x, y, x, y}
+	}
+	from, to := min(a.Start, a.Start+a.Sweep), max(a.Start, a.Start+a.Sweep)
+	box := at(from).Around(at(to))
+	for quarter := math.Ceil(from/90) * 90; quarter <= to; quarter += 90 {
+		box = box.Around(at(quarter))
+	}
+	return box
 }

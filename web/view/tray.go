@@ -15,7 +15,7 @@ func BuildTray(system kinds.System, set kinds.SymbolSet) []TrayGroup {
 	for _, name := range kinds.Groups() {
 		group := TrayGroup{Name: string(name)}
 		for _, kind := range kinds.All() {
-			if kind.Group != name || (system.AC() && kind.DCOnly) {
+			if kind.Group != name || (system.AC() && kind.DCOnly) || (!system.AC() && kind.ACOnly) {
 				continue
 			}
 			for _, entry := range kind.Tray {

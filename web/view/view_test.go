@@ -66,19 +66,22 @@ func TestTheStripSaysWhatTheSuppliesDeliver(t *testing.T) {
 	}
 }
 
-func TestTheTrayOffersEveryKindWithASymbol(t *testing.T) {
-	offered := map[string]bool{}
-	for _, group := range view.BuildTray(kinds.System{Kind: "dc"}, kinds.IEC) {
-		for _, entry := range group.Entries {
-			offered[entry.Kind] = true
-			if !strings.HasPrefix(entry.Symbol, "<svg") || entry.Title == "" || !strings.Contains(entry.Find, strings.ToLower(entry.Title)) {
-				t.Errorf("the entry %+v", entry)
+func TestTheTrayOffersEveryKindOfTheSystemWithASymbol(t *testing.T) {
+	for _, system := range []kinds.System{{Kind: "dc"}, {Kind: "ac", Hertz: 50}} {
+		offered := map[string]bool{}
+		for _, group := range view.BuildTray(system, kinds.IEC) {
+			for _, entry := range group.Entries {
+				offered[entry.Kind] = true
+				if !strings.HasPrefix(entry.Symbol, "<svg") || entry.Title == "" || !strings.Contains(entry.Find, strings.ToLower(entry.Title)) {
+					t.Errorf("the entry %+v", entry)
+				}
 			}
 		}
-	}
-	for _, kind := range kinds.All() {
-		if !offered[kind.Name] {
-			t.Errorf("the tray does not offer %s", kind.Name)
+		for _, kind := range kinds.All() {
+			want := !(kind.DCOnly && system.AC()) && !(kind.ACOnly && !system.AC())
+			if offered[kind.Name] != want {
+				t.Errorf("%s: %s is offered: %v, want %v", system.Kind, kind.Name, offered[kind.Name], want)
+			}
 		}
 	}
 }
