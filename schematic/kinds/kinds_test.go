@@ -18,7 +18,7 @@ var first = map[string]struct{ pins, branches int }{
 	"lamp": {2, 1}, "switch": {2, 1}, "fuse": {2, 1}, "voltmeter": {2, 1}, "ammeter": {2, 1},
 	"ac-supply": {2, 1}, "capacitor": {2, 1}, "inductor": {2, 1}, "impedance": {2, 1}, "heater": {2, 1}, "rtd": {2, 1},
 	"potentiometer": {3, 2},
-	"terminal": {1, 0}, "potential": {1, 0}, "earth": {1, 0},
+	"terminal":      {1, 0}, "potential": {1, 0}, "earth": {1, 0},
 }
 
 func TestEveryKindIsWhole(t *testing.T) {
